@@ -1,0 +1,11 @@
+import type { NextConfig } from 'next'
+
+const config: NextConfig = {
+  // Knex probes for every database driver it knows; left outside the bundle it only loads the one we use.
+  serverExternalPackages: ['knex', 'pg', 'pg-boss', '@node-rs/argon2', 'pino', 'twilio', 'nodemailer'],
+  poweredByHeader: false,
+  reactStrictMode: true,
+  devIndicators: false,
+}
+
+export default config
