@@ -54,6 +54,9 @@ export default defineConfig([
   keepOut(['shared/**'], ROOMS),
   keepOut(['simulator/**'], allBut('simulator')),
   // The commands start and join the rooms; they are the only place allowed to see all of them.
-  { files: ['lib/run/**', 'lib/analysis/**/*.test.ts', 'tests/**'], rules: { 'no-restricted-imports': 'off' } },
+  {
+    files: ['lib/run/**', 'lib/analysis/**/*.test.ts', 'tests/**'],
+    rules: { 'no-restricted-imports': 'off' },
+  },
   globalIgnores(['.next/**', '.data/**', 'node_modules/**', 'next-env.d.ts', 'coverage/**']),
 ])

@@ -11,7 +11,11 @@ export default defineConfig({
     projects: [
       {
         resolve: { alias },
-        test: { name: 'unit', include: ['tests/unit/**/*.test.ts', 'tests/unit/**/*.test.tsx'], testTimeout: 60_000 },
+        test: {
+          name: 'unit',
+          include: ['tests/unit/**/*.test.ts', 'tests/unit/**/*.test.tsx'],
+          testTimeout: 60_000,
+        },
       },
       { resolve: { alias }, test: { name: 'reference', include: ['tests/reference/**/*.test.ts'] } },
       {
@@ -27,7 +31,11 @@ export default defineConfig({
         resolve: { alias },
         test: {
           name: 'server',
-          include: ['tests/integration/**/*.test.ts', 'tests/browser/**/*.test.ts', 'tests/faults/**/*.test.ts'],
+          include: [
+            'tests/integration/**/*.test.ts',
+            'tests/browser/**/*.test.ts',
+            'tests/faults/**/*.test.ts',
+          ],
           globalSetup: ['tests/support/global-setup.ts'],
           testTimeout: 60_000,
           hookTimeout: 180_000,
