@@ -37,9 +37,10 @@ export default defineConfig({
             'tests/faults/**/*.test.ts',
           ],
           globalSetup: ['tests/support/global-setup.ts'],
+          setupFiles: ['tests/support/in-process.ts'],
           testTimeout: 60_000,
           hookTimeout: 180_000,
-          // One server and one browser serve all files; two files at a time is what two cores carry.
+          // One server and one browser serve all files; a second file at a time only slows both on two cores.
           maxWorkers: 1,
         },
       },
