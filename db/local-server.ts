@@ -23,7 +23,8 @@ export interface LocalServer {
   port: number
   /** Connection string of another database on the same server. */
   urlOf(database: string): string
-  stop(): Promise<void>
+  /** Stops the server if this call started it, or whoever did when `foundToo`. */
+  stop(foundToo?: boolean): Promise<void>
 }
 
 interface Identity {
@@ -92,8 +93,8 @@ export async function startLocalServer(options: {
     port,
     url: urlOf('postgres'),
     urlOf,
-    stop: async () => {
-      if (!startedHere) return
+    stop: async (foundToo = false) => {
+      if (!startedHere && !foundToo) return
       await run(path.join(bin, 'pg_ctl'), ['-D', cluster, 'stop', '-m', 'fast', '-t', '30'], identity)
     },
   }

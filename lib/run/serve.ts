@@ -92,7 +92,8 @@ async function openDatabase(undo: (() => Promise<void> | void)[]): Promise<strin
   }
   console.log('Starting the private database …')
   const server: LocalServer = await startLocalServer({ dataFolder: path.join(DATA, 'postgres') })
-  undo.push(() => server.stop())
+  // The lock says that this is the only start here: a server left by one that was killed is ours to end too.
+  undo.push(() => server.stop(true))
   const admin = connect(server.url)
   try {
     const { rowCount } = (await admin.raw("select 1 from pg_database where datname = 'middlewatch'")) as {

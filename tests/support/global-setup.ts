@@ -52,7 +52,7 @@ export default async function setup(project: TestProject): Promise<() => Promise
     await gone
     await Promise.all([mail.stop(), sms.stop()])
     await admin.destroy()
-    await database.stop()
+    await database.stop(true)
   }
 }
 
