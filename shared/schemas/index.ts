@@ -1,0 +1,12 @@
+/** Everything that crosses a wire, and the types drawn from it. */
+export * from './calculators'
+export * from './common'
+export * from './figures'
+export * from './health'
+export * from './loggers'
+export * from './notices'
+export * from './people'
+export * from './record'
+export * from './vessels'
+export * from './visits'
+export * from './words'
