@@ -1,0 +1,409 @@
+import { openingEvents, type OpeningEvent } from '@/simulator/habits'
+import { isRecording, loggerClock, takeReading, type SimSample } from '@/simulator/logger'
+import { MS_PER_SECOND, PA_PER_INHG } from '@/simulator/physics/constants'
+import { airAmount, saturationPressurePa, toKelvin } from '@/simulator/physics/gas'
+import {
+  gasRates,
+  rungeKuttaStep,
+  vacuumOf,
+  type Gas,
+  type StepConditions,
+  type Surroundings,
+} from '@/simulator/physics/integrate'
+import { areaForFlow } from '@/simulator/physics/leak-flow'
+import { freshCondition, inSpans, leakLawOf } from '@/simulator/physics/leaks'
+import { pumpingSpeed, supplyVoltage, wearFactor } from '@/simulator/physics/pump'
+import { weatherOf } from '@/simulator/physics/weather'
+import { hash32, nextNormal, randomState } from '@/simulator/random'
+import { boundariesOf, type BoatSpec } from '@/simulator/spec'
+import { newState, type BoatState } from '@/simulator/state'
+import { gasVolumeM3, switchPointsAt, type TrueRun } from '@/simulator/truth'
+
+const LONGEST_STEP_SECONDS = 15
+const SHORTEST_STEP_SECONDS = 0.25
+/** A step is cut so that the pressure moves by about so much in it. */
+const PRESSURE_STEP_PA = 150
+/** A pump start so soon after the bowl valve closed is still that flush's. */
+const AFTER_FLUSH_MS = 2000
+const SEARCH_AHEAD_MS = 6 * 3_600_000
+/** A vent stands open like a hole of some 6 mm. */
+const VENT_AREA_M2 = areaForFlow(500)
+
+/** Moves one boat forward from event to event. Its steps never depend on how far it is asked to go. */
+export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState | null) {
+  const weather = weatherOf(spec.weather, spec.weatherSeed ?? spec.seed, spec.offsetSeconds)
+  const nextOpening = openingEvents(spec.habits, spec.seed, spec.offsetSeconds)
+  const lawOfLeaks = leakLawOf(spec.leaks)
+  const boundaries = boundariesOf(spec)
+  const clock = loggerClock(spec.logger)
+  const intervalMs = spec.logger.intervalSeconds * MS_PER_SECOND
+  const phaseMs = (hash32(spec.seed, 41) % spec.logger.intervalSeconds) * MS_PER_SECOND
+  const sampleTime = (index: number): number => clock.trueAt(index * intervalMs + phaseMs)
+
+  // --- the surroundings ---------------------------------------------------------------------------
+
+  const wallTargetC = (at: number): number =>
+    spec.weather.meanC + spec.gas.coupling * (weather.airC(at) - spec.weather.meanC)
+  const wallAfter = (wallC: number, at: number, seconds: number): number => {
+    if (spec.gas.lagSeconds <= 0) return wallTargetC(at + seconds * MS_PER_SECOND)
+    const target = wallTargetC(at + seconds * 500)
+    return wallC + (target - wallC) * (1 - Math.exp(-seconds / spec.gas.lagSeconds))
+  }
+  const surroundings = (at: number, wallC: number): Surroundings => ({
+    outsidePa: weather.barometerPa(at),
+    outsideK: toKelvin(weather.airC(at)),
+    wallK: toKelvin(wallC),
+    vapourPa: spec.gas.wetness > 0 ? spec.gas.wetness * saturationPressurePa(wallC) : 0,
+  })
+
+  // --- state --------------------------------------------------------------------------------------
+
+  const state: BoatState = resumed ?? startingState()
+  let around = surroundings(state.t, state.wallC)
+  let upcoming: OpeningEvent | null = null
+  let searchedTo = state.eventCursor
+
+  function startingState(): BoatState {
+    const wallC = wallTargetC(fromMs)
+    const start = surroundings(fromMs, wallC)
+    const dryPa = start.outsidePa - spec.initialVacuumPa - start.vapourPa
+    const volume = gasVolumeM3(spec, spec.tank.filledAtStartM3)
+    const fresh = newState(fromMs, {
+      amount: airAmount(dryPa, volume, start.wallK),
+      wallC,
+      filledM3: spec.tank.filledAtStartM3,
+      conditions: spec.leaks.map(() => freshCondition()),
+      nextSample: Math.ceil((clock.says(fromMs) - phaseMs) / intervalMs),
+      random: {
+        switch: randomState(spec.seed, 1),
+        seats: randomState(spec.seed, 2),
+        sensor: randomState(spec.seed, 3),
+      },
+    })
+    fresh.cutInPa = switchPointsAt(spec.switch, fromMs).cutInPa
+    fresh.openHold = {
+      startedAt: fromMs,
+      vacuumAtStartPa: spec.initialVacuumPa,
+      flushes: 0,
+      settledPa: null,
+      interrupted: false,
+    }
+    return fresh
+  }
+
+  const volumeNow = (): number => gasVolumeM3(spec, state.filledM3)
+  const gasNow = (): Gas => ({ amount: state.amount, excessK: state.excessK })
+  const vacuumNow = (): number => vacuumOf(gasNow(), volumeNow(), around)
+  const ventedAt = (at: number): boolean =>
+    inSpans(spec.vented, at) ||
+    spec.tank.pumpOuts.some((out) => at >= out.at && at < out.at + out.minutes * 60_000)
+  const poweredAt = (at: number): boolean =>
+    !inSpans(spec.breakerOff, at) && !inSpans(spec.layUp, at) && !inSpans(spec.pumpFails, at)
+  const supplyAt = (at: number): number =>
+    supplyVoltage(spec.supply, spec.seed, spec.offsetSeconds, state.pumpOn, at)
+
+  function noteChange(): void {
+    state.pending.snapshots.push({
+      at: state.t,
+      conditions: state.conditions.map((condition) => ({ ...condition })),
+      filledM3: state.filledM3,
+    })
+  }
+
+  // --- switch and pump ----------------------------------------------------------------------------
+
+  const scattered = (pa: number): number => pa + spec.switch.scatterPa * nextNormal(state.random.switch)
+
+  function operateSwitch(): void {
+    const vacuum = vacuumNow()
+    const points = switchPointsAt(spec.switch, state.t)
+    if (!state.switchClosed && vacuum <= state.cutInPa) {
+      state.switchClosed = true
+      state.cutOutPa = scattered(points.cutOutPa)
+    } else if (state.switchClosed && vacuum >= state.cutOutPa) {
+      state.switchClosed = false
+      state.cutInPa = Math.min(scattered(points.cutInPa), state.cutOutPa - 0.1 * PA_PER_INHG)
+    }
+    const powered = poweredAt(state.t)
+    if (!powered && state.openHold) state.openHold.interrupted = true
+    const on = state.switchClosed && powered
+    if (on && !state.pumpOn) startPump(vacuum)
+    else if (!on && state.pumpOn) stopPump(vacuum)
+  }
+
+  function triggerOf(vacuumPa: number): TrueRun['trigger'] {
+    if (state.flush) return 'flush'
+    const cutInPa = switchPointsAt(spec.switch, state.t).cutInPa
+    return vacuumPa < cutInPa - PA_PER_INHG || ventedAt(state.t) || state.t === fromMs ? 'startup' : 'leak'
+  }
+
+  function startPump(vacuumPa: number): void {
+    const trigger = triggerOf(vacuumPa)
+    if (state.flush) state.flush.startedPump = true
+    const hold = state.openHold
+    if (hold) {
+      state.pending.holds.push({
+        startedAt: hold.startedAt,
+        endedAt: state.t,
+        ending: hold.interrupted ? 'off' : trigger,
+        flushes: hold.flushes,
+        vacuumAtStartPa: hold.vacuumAtStartPa,
+        vacuumAtEndPa: vacuumPa,
+        settledPa: hold.settledPa,
+      })
+    }
+    state.openHold = null
+    state.openRun = { startedAt: state.t, trigger, vacuumAtStartPa: vacuumPa }
+    state.pumpOn = true
+    emitSample(state.t, true)
+  }
+
+  function stopPump(vacuumPa: number): void {
+    if (state.openRun) {
+      state.pending.runs.push({ ...state.openRun, stoppedAt: state.t, vacuumAtStopPa: vacuumPa })
+    }
+    state.openRun = null
+    state.openHold = {
+      startedAt: state.t,
+      vacuumAtStartPa: vacuumPa,
+      flushes: 0,
+      settledPa: null,
+      interrupted: false,
+    }
+    state.pumpOn = false
+    reseat((leak) => leak.reseatsAtRun)
+    emitSample(state.t, true)
+  }
+
+  function reseat(deviationOf: (leak: BoatSpec['leaks'][number]) => number | undefined): void {
+    let changed = false
+    spec.leaks.forEach((leak, index) => {
+      const deviation = deviationOf(leak)
+      const condition = state.conditions[index]
+      if (!deviation || !condition) return
+      condition.seat = Math.exp(deviation * nextNormal(state.random.seats))
+      changed = true
+    })
+    if (changed) noteChange()
+  }
+
+  // --- flushes ------------------------------------------------------------------------------------
+
+  function findUpcoming(): OpeningEvent | null {
+    while (!upcoming && searchedTo < state.t + SEARCH_AHEAD_MS) {
+      const found = nextOpening(searchedTo, searchedTo + SEARCH_AHEAD_MS)
+      if (found && !inSpans(spec.layUp, found.at)) upcoming = found
+      searchedTo = found ? found.at : searchedTo + SEARCH_AHEAD_MS - 1
+    }
+    return upcoming
+  }
+
+  function wet(headKey: string): void {
+    let changed = false
+    spec.leaks.forEach((leak, index) => {
+      const condition = state.conditions[index]
+      if (!leak.wetting || leak.part !== headKey || !condition) return
+      condition.wettedAt = state.t
+      condition.wetSeconds = leak.wetting.wetSeconds * Math.exp(0.3 * nextNormal(state.random.seats))
+      changed = true
+    })
+    if (changed) noteChange()
+  }
+
+  function openBowl(event: OpeningEvent): void {
+    finishFlush()
+    upcoming = null
+    state.eventCursor = event.at
+    const head = spec.habits.heads[event.headIndex]
+    if (!head) return
+    if (event.kind === 'cup') return wet(head.key)
+    const seconds = spec.habits.flushSeconds * (event.kind === 'tap' ? 0.4 : 1)
+    const meanFlow = (head.airLitres * event.airFactor * 101.325) / seconds
+    state.flush = {
+      at: state.t,
+      head: head.key,
+      kind: event.kind,
+      areaM2: areaForFlow(meanFlow),
+      closesAt: state.t + seconds * MS_PER_SECOND,
+      open: true,
+      vacuumBeforePa: vacuumNow(),
+      dropPa: 0,
+      startedPump: false,
+    }
+    if (state.openHold) state.openHold.flushes += 1
+  }
+
+  function closeBowl(): void {
+    const flush = state.flush
+    if (!flush) return
+    flush.open = false
+    const head = spec.habits.heads.find((each) => each.key === flush.head)
+    if (spec.tank.collects && head && flush.kind === 'flush') {
+      state.filledM3 += head.waterLitres / 1000
+      noteChange()
+    }
+    flush.dropPa = flush.vacuumBeforePa - vacuumNow()
+    reseat((leak) => (leak.part === flush.head ? leak.reseatsAtFlush : undefined))
+    wet(flush.head)
+  }
+
+  function finishFlush(): void {
+    const flush = state.flush
+    if (!flush) return
+    if (flush.open) closeBowl()
+    const { at, head, kind, dropPa, startedPump } = flush
+    state.pending.flushes.push({ at, head, kind, dropPa, startedPump })
+    state.flush = null
+  }
+
+  // --- samples ------------------------------------------------------------------------------------
+
+  function emitSample(at: number, isEdge: boolean): void {
+    if (isEdge && !spec.logger.channels.includes('pump')) return
+    const said = Math.round(clock.says(at))
+    if (said <= state.lastSaidAt || !isRecording(spec.logger, at)) return
+    const truth = {
+      vacuumPa: vacuumNow(),
+      pumpOn: state.pumpOn,
+      airC: weather.airC(at),
+      barometerPa: around.outsidePa,
+      supplyV: supplyAt(at),
+    }
+    const stuck = inSpans(spec.logger.stuck, at) ? state.lastVacuumReadPa : null
+    const sample: SimSample = takeReading(spec.logger, state.random.sensor, said, truth, stuck)
+    state.lastSaidAt = said
+    if (sample.vacuumPa !== null) state.lastVacuumReadPa = sample.vacuumPa
+    state.pending.samples.push({ trueAt: at, sample })
+  }
+
+  // --- one step -----------------------------------------------------------------------------------
+
+  /** The next instant that a step must not pass. */
+  function nextStop(): number {
+    let stop = Math.min(state.t + LONGEST_STEP_SECONDS * MS_PER_SECOND, sampleTime(state.nextSample))
+    const event = findUpcoming()
+    if (event && event.at > state.t && event.at < stop) stop = event.at
+    const flushStop = state.flush ? state.flush.closesAt + (state.flush.open ? 0 : AFTER_FLUSH_MS) : Infinity
+    stop = Math.min(stop, flushStop)
+    for (const boundary of boundaries) {
+      if (boundary > state.t) return Math.min(stop, boundary)
+    }
+    return stop
+  }
+
+  function advance(): void {
+    operateSwitch()
+    const start = state.t
+    const stop = nextStop()
+    const wear = wearFactor(spec.pump, start)
+    const supplyV = supplyAt(start)
+    const middleOfStep = (start + stop) / 2
+    const law = lawOfLeaks(state.conditions, middleOfStep)
+    if (state.flush?.open) law.areaM2 += state.flush.areaM2
+    if (ventedAt(start)) law.areaM2 += VENT_AREA_M2
+    const conditions: StepConditions = {
+      law,
+      volumeM3: volumeNow(),
+      heatShare: spec.gas.heatShare,
+      settleSeconds: spec.gas.settleSeconds,
+      speed: state.pumpOn ? (vacuumPa) => pumpingSpeed(spec.pump, vacuumPa, supplyV, wear) : null,
+    }
+    const gas = gasNow()
+    const first = gasRates(gas, conditions, around)
+    const temperature = around.wallK + gas.excessK
+    const paPerSecond = (first.amount * temperature + gas.amount * first.excessK) / conditions.volumeM3
+    const quiet = PRESSURE_STEP_PA / Math.max(1e-9, Math.abs(paPerSecond))
+    const seconds = Math.min((stop - start) / MS_PER_SECOND, Math.max(SHORTEST_STEP_SECONDS, quiet))
+
+    const startVacuum = vacuumOf(gas, conditions.volumeM3, around)
+    const attempt = (duration: number) => {
+      const wallMiddle = wallAfter(state.wallC, start, duration / 2)
+      const wallC = wallAfter(state.wallC, start, duration)
+      const middle = surroundings(start + duration * 500, wallMiddle)
+      const end = surroundings(start + duration * MS_PER_SECOND, wallC)
+      const after = rungeKuttaStep(gas, first, duration, conditions, middle, end)
+      return { duration, gas: after, wallC, end, vacuum: vacuumOf(after, conditions.volumeM3, end) }
+    }
+    let result = attempt(seconds)
+    const thresholdPa = state.switchClosed ? state.cutOutPa : state.cutInPa
+    const past = (vacuum: number): number =>
+      state.switchClosed ? vacuum - thresholdPa : thresholdPa - vacuum
+    if (past(startVacuum) < 0 && past(result.vacuum) > 0) {
+      result = crossing(attempt, past, past(startVacuum), result)
+    }
+    state.t =
+      result.duration >= (stop - start) / MS_PER_SECOND ? stop : start + result.duration * MS_PER_SECOND
+    state.wallC = result.wallC
+    around = result.end
+    state.amount = result.gas.amount
+    state.excessK = result.gas.excessK
+    const leaks = law.areaM2 + law.conductance > 0
+    if (leaks && !state.pumpOn && startVacuum * result.vacuum < 0) {
+      // Large openings reach the outside pressure within a step; they stay there instead of overshooting.
+      state.amount = airAmount(around.outsidePa - around.vapourPa, conditions.volumeM3, around.wallK)
+      state.excessK = 0
+    }
+    arrive()
+  }
+
+  /** Regula falsi (Illinois) for the instant at which the switch's point is passed, to half a millisecond. */
+  function crossing<Attempt extends { duration: number; vacuum: number }>(
+    attempt: (duration: number) => Attempt,
+    past: (vacuum: number) => number,
+    pastAtStart: number,
+    passed: Attempt,
+  ): Attempt {
+    let low = 0
+    let lowValue = pastAtStart
+    let high = passed
+    let highValue = past(passed.vacuum)
+    for (let i = 0; i < 40 && high.duration - low > 0.0005 && highValue > 0.001; i++) {
+      const guess = (low * highValue - high.duration * lowValue) / (highValue - lowValue)
+      const tried = attempt(Math.min(high.duration - 1e-6, Math.max(low + 1e-6, guess)))
+      const value = past(tried.vacuum)
+      if (value >= 0) {
+        high = tried
+        highValue = value
+        lowValue /= 2
+      } else {
+        low = tried.duration
+        lowValue = value
+        highValue /= 2
+      }
+    }
+    return high
+  }
+
+  /** What is due at the instant just reached. */
+  function arrive(): void {
+    const hold = state.openHold
+    if (hold && hold.settledPa === null && hold.flushes === 0 && state.t - hold.startedAt >= 180_000) {
+      hold.settledPa = vacuumNow()
+    }
+    if (state.flush) {
+      if (state.flush.open && state.t >= state.flush.closesAt) closeBowl()
+      else if (!state.flush.open && state.t >= state.flush.closesAt + AFTER_FLUSH_MS) finishFlush()
+    }
+    for (const out of spec.tank.pumpOuts) {
+      if (state.t !== out.at + out.minutes * 60_000) continue
+      const before = volumeNow()
+      state.filledM3 = 0
+      state.amount *= volumeNow() / before
+      noteChange()
+    }
+    operateSwitch()
+    if (upcoming && state.t >= upcoming.at) openBowl(upcoming)
+    while (sampleTime(state.nextSample) <= state.t + 1e-3) {
+      emitSample(state.t, false)
+      state.nextSample += 1
+    }
+  }
+
+  return {
+    state,
+    /** Moves on until the boat's time is at or past `toMs`. */
+    runTo: (toMs: number): void => {
+      while (state.t < toMs) advance()
+    },
+  }
+}
