@@ -65,6 +65,11 @@ export interface FiguresInput {
   current: CurrentReading | null
   learned: LearnedFigures
   settings: FiguresSettings
+  /**
+   * With the pump on: vacuum now minus vacuum two minutes before, Pa, from the samples; null = not measured, and
+   * the length of the run alone decides whether it runs on.
+   */
+  risePa: number | null
   /** What people say of the system, in force at `at`. */
   statement: { value: StatementValue; since: Instant } | null
   /** Newest receipt of anything from its loggers, or newest sample where that is later; null = never heard. */

@@ -1,10 +1,23 @@
+/** Pressure of the gas per degree of the air as measured and of its two lagged copies (`LAG_SECONDS`), Pa/K. */
+export type GasResponse = readonly [number, number, number]
+
 /**
- * What is known of how a system's vacuum decays, as plain data that can be stored and read again.
- * dp/dt at steady 20 °C = orificePerS · O(p) + laminarPerS · L(p), with the two laws' drives in Pa.
+ * The fitted leak of a system in rates at the middle of its band: an orifice and a laminar part, Pa/h at
+ * steady 20 °C and standard pressure, each ≥ 0.
  */
+export interface LeakLawFit {
+  orificePaPerHour: number
+  laminarPaPerHour: number
+  /** Vacuum at which these rates hold, Pa. */
+  midPa: number
+  standardPressurePa: number
+}
+
+/** What is known of how a system's vacuum decays, as plain data that can be stored and read again. */
 export interface LeakModel {
-  /** 1/s, both ≥ 0. Null where only the length of holds is known (pump only, short cycling). */
-  law: { orificePerS: number; laminarPerS: number } | null
+  /** Null where only the length of holds is known (pump only). */
+  law: LeakLawFit | null
+  gasResponse: GasResponse
   /** Hold time at steady 20 °C and standard pressure, with its 95 % interval; `highSeconds` null = open. */
   holdSeconds: number
   lowSeconds: number
@@ -12,14 +25,11 @@ export interface LeakModel {
   bound: null | 'at-least'
   /** Standard deviation of the logarithm of the hold time. */
   logSigma: number
-  /** Ambient pressure that "standard" means at this place, Pa. */
+  /** The hold as it is seen to last, from the settled top, s: what the next nights bring. */
+  observedHoldSeconds: number
   standardPressurePa: number
   cutOutPa: number | null
-  /** Where a hold starts from once the gas has settled. */
   settledPa: number | null
   cutInPa: number | null
-  /** Share of saturated vapour removed, and which air stands for the gas's: as measured or a lag of so many seconds. */
-  vapourFraction: number
-  lagSeconds: number
   compensated: boolean
 }

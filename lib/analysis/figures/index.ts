@@ -1,0 +1,3 @@
+export * from './figures-of'
+export * from './state'
+export * from './types'
