@@ -1,0 +1,3 @@
+export * from './judge-leak-down'
+export * from './limits'
+export * from './verdict'
