@@ -1,5 +1,6 @@
 import type { LegBins } from '../fold/types'
 import { celsiusToKelvin } from '@/shared/units'
+import { mergeBins, type LegPoint } from '../legs'
 import { laminarDrivePa, orificeDrivePa } from './leak-law'
 import { at, type Symmetric } from './symmetric'
 
@@ -51,7 +52,7 @@ export function legEquations(leg: FitLeg, frame: BandFrame): LegEquations | null
   const points = mergedPoints(leg)
   const count = points.length
   if (count < 3) return null
-  const hasAir = points.every((point) => Number.isFinite(point.air + point.lagged + point.slow))
+  const hasAir = points.every((point) => Number.isFinite(point.airC + point.laggedC + point.slowC))
   const hasBarometer = points.every((point) => Number.isFinite(point.barometerPa))
   const middlePa = frame.standardPressurePa - frame.midPa
   const orificeMid = orificeDrivePa(frame.standardPressurePa, middlePa)
@@ -66,7 +67,7 @@ export function legEquations(leg: FitLeg, frame: BandFrame): LegEquations | null
   points.forEach((point, row) => {
     const ambientPa = hasBarometer ? point.barometerPa : frame.standardPressurePa
     const insidePa = ambientPa - point.vacuumPa
-    const warmth = hasAir ? Math.sqrt(celsiusToKelvin(point.air) / REFERENCE_K) : 1
+    const warmth = hasAir ? Math.sqrt(celsiusToKelvin(point.airC) / REFERENCE_K) : 1
     const here = {
       hours: point.offsetSeconds / 3600,
       orifice: (orificeDrivePa(ambientPa, insidePa) / orificeMid) * warmth,
@@ -80,7 +81,7 @@ export function legEquations(leg: FitLeg, frame: BandFrame): LegEquations | null
     before = here
     hoursOf[row] = here.hours
     pressure[row] = insidePa
-    const gas = hasAir ? [point.air, point.lagged, point.slow] : [0, 0, 0]
+    const gas = hasAir ? [point.airC, point.laggedC, point.slowC] : [0, 0, 0]
     design.set([orifice, laminar, ...gas], row * UNKNOWNS)
   })
   const hours = at(hoursOf, count - 1) - at(hoursOf, 0)
@@ -91,41 +92,12 @@ export function legEquations(leg: FitLeg, frame: BandFrame): LegEquations | null
   return { ...squares(design, pressure, hoursOf, count), ...span, hasAir, hasBarometer }
 }
 
-interface LegPoint {
-  offsetSeconds: number
-  vacuumPa: number
-  /** NaN where unknown, as the next three. */
-  air: number
-  lagged: number
-  slow: number
-  barometerPa: number
-}
-
-/** Bins with a finite vacuum after the settling, neighbours averaged so that a leg has at most `MAX_ROWS`. */
-function mergedPoints(leg: FitLeg): LegPoint[] {
-  const { offsetSeconds, vacuumPa, airC, laggedAirC, barometerPa } = leg.bins
-  const lengthSeconds = (offsetSeconds.at(-1) ?? 0) - (offsetSeconds[0] ?? 0)
-  const sinceHoldSeconds = (leg.startedAt - leg.holdStartedAt) / 1000
+/** The leg's points after the settling, neighbours averaged so that it has at most `MAX_ROWS`. */
+function mergedPoints({ bins, startedAt, holdStartedAt }: FitLeg): LegPoint[] {
+  const lengthSeconds = (bins.offsetSeconds.at(-1) ?? 0) - (bins.offsetSeconds[0] ?? 0)
+  const sinceHoldSeconds = (startedAt - holdStartedAt) / 1000
   const settlingSeconds = Math.min(480, 0.12 * lengthSeconds) - Math.max(0, sinceHoldSeconds - 60)
-  const usable = offsetSeconds.flatMap((offset, i) =>
-    Number.isFinite(vacuumPa[i]) && offset >= settlingSeconds ? [i] : [],
-  )
-  const stride = Math.max(1, Math.ceil(usable.length / MAX_ROWS))
-  const points: LegPoint[] = []
-  for (let from = 0; from < usable.length; from += stride) {
-    const group = usable.slice(from, from + stride)
-    const mean = (values: readonly (number | null)[]): number =>
-      group.reduce((sum, i) => sum + (values[i] ?? NaN), 0) / group.length
-    points.push({
-      offsetSeconds: mean(offsetSeconds),
-      vacuumPa: mean(vacuumPa),
-      air: mean(airC),
-      lagged: mean(laggedAirC[0]),
-      slow: mean(laggedAirC[1]),
-      barometerPa: mean(barometerPa),
-    })
-  }
-  return points
+  return mergeBins(bins, MAX_ROWS, settlingSeconds)
 }
 
 function centreColumns(values: Float64Array, count: number, width: number): void {

@@ -1,0 +1,2 @@
+export * from './leg-rate'
+export * from './merge-bins'
