@@ -1,0 +1,44 @@
+import Link from 'next/link'
+import { Mark } from '@/components/ui/mark'
+import { navigationOf } from '@/components/shell/navigation'
+import { NavigationLinks } from '@/components/shell/navigation-links'
+import type { Theme } from '@/components/shell/preferences'
+import { SignOut } from '@/components/shell/sign-out'
+import { ThemeSelect } from '@/components/shell/theme-select'
+import { UnitsSelect } from '@/components/shell/units-select'
+import { homeOf, type Viewer } from '@/components/shell/viewer'
+
+/** The bar over every sheet: the mark, where this reader may go, and how they want to read. */
+export function Header({ viewer, theme, demo }: { viewer: Viewer | null; theme: Theme; demo: boolean }) {
+  return (
+    <header
+      data-shell
+      className="sheet flex flex-wrap items-center gap-x-7 border-b border-line py-1 sm:flex-nowrap"
+    >
+      <Link
+        href={viewer ? homeOf(viewer) : '/'}
+        className="inline-flex min-h-11 items-center gap-2 text-[1.125rem] font-bold tracking-[-0.01em] text-ink no-underline"
+      >
+        <Mark />
+        Middlewatch
+      </Link>
+      <div className="order-last w-full min-w-0 sm:order-none sm:w-auto">
+        <NavigationLinks items={navigationOf(viewer, demo)} />
+      </div>
+      <div className="ml-auto flex items-center gap-3 whitespace-nowrap">
+        <UnitsSelect />
+        <ThemeSelect initial={theme} />
+        {viewer ? (
+          <>
+            <span className="hidden text-ink-2 lg:inline">{viewer.shopName ?? viewer.name}</span>
+            <SignOut />
+          </>
+        ) : (
+          <Link href="/sign-in" className="inline-flex min-h-11 items-center no-underline hover:underline">
+            Sign in
+          </Link>
+        )}
+      </div>
+    </header>
+  )
+}

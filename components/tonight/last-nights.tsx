@@ -1,0 +1,38 @@
+import { NightAxis, axisMinutes } from '@/components/charts/night-axis'
+import { NightStrip } from '@/components/charts/night-strip'
+import { inQuiet } from '@/components/charts/scales'
+import { dayOfDate, weekdayOfDate } from '@/components/time'
+import type { Night } from '@/shared/schemas'
+
+/** Runs by themselves within the quiet hours: what may have woken somebody. */
+export const wokenBy = (night: Night): number =>
+  night.runs.filter((minute) => inQuiet(minute, night.quiet)).length + night.more
+
+/** What a night came to: "quiet", "1 run", "6 runs". */
+export function nightWord(night: Night): string {
+  const count = wokenBy(night)
+  if (count === 0) return 'quiet'
+  return `${count} ${count === 1 ? 'run' : 'runs'}`
+}
+
+/** The last nights, newest first, each as a strip with its outcome in a word. */
+export function LastNights({ nights, calm }: { nights: readonly Night[]; calm: boolean }) {
+  const newest = [...nights].reverse()
+  const quiet = newest[0]?.quiet ?? [240, 780]
+  return (
+    <div className="grid grid-cols-[2.4em_1fr_4.6em] items-center gap-x-3 gap-y-1.5">
+      {newest.map((night) => (
+        <div key={night.date} className="contents">
+          <span>{weekdayOfDate(night.date)}</span>
+          <NightStrip night={night} height={20} calm={calm} label={dayOfDate(night.date)} />
+          <span className={`figure ${wokenBy(night) === 0 ? 'text-sound' : calm ? '' : 'text-attention'}`}>
+            {nightWord(night)}
+          </span>
+        </div>
+      ))}
+      <span />
+      <NightAxis minutes={axisMinutes(quiet)} />
+      <span />
+    </div>
+  )
+}
