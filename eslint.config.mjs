@@ -40,7 +40,7 @@ export default defineConfig([
   keepOut(['ingest/**'], allBut('ingest', 'lib', 'db'), ['@/lib/run/**', '@/lib/auth/**']),
   keepOut(['lib/**'], allBut('lib', 'db')),
   keepOut(['lib/analysis/**'], allBut('lib'), [
-    '@/lib/[!a]**',
+    '@/lib/[b-z]**',
     '@/lib/access/**',
     '@/lib/auth/**',
     'node:*',
