@@ -1,0 +1,58 @@
+import type { Reading } from './readings'
+import { misfit } from './shares'
+import type { Contradiction } from './types'
+
+/** χ² beyond which tests cannot all be right (one in a thousand). */
+const CONTRADICTORY = 10.83
+const MOST_TOGETHER = 3
+
+/**
+ * Tests that no set of leaks explains together, in the smallest sets that show it, and of each set the one
+ * to repeat: the one without which all tests fit best, of equals the one that says least.
+ */
+export function findContradictions(
+  readings: readonly Reading[],
+  priors: ReadonlyMap<string, number>,
+): Contradiction[] {
+  if (misfit(readings, priors) <= CONTRADICTORY) return []
+  const found: number[][] = []
+  for (let size = 2; size <= Math.min(MOST_TOGETHER, readings.length); size += 1) {
+    for (const set of subsets(readings.length, size)) {
+      if (found.some((known) => known.every((index) => set.includes(index)))) continue
+      if (misfit(pick(readings, set), priors) > CONTRADICTORY) found.push(set)
+    }
+  }
+  const sets = found.length > 0 ? found : [readings.map((_, index) => index)]
+  return sets.map((tests) => ({ tests, repeat: worstOf(tests, readings, priors) }))
+}
+
+const pick = (readings: readonly Reading[], indexes: readonly number[]) =>
+  readings.filter((_, index) => indexes.includes(index))
+
+function worstOf(
+  tests: readonly number[],
+  readings: readonly Reading[],
+  priors: ReadonlyMap<string, number>,
+): number {
+  const scored = tests.map((index) => {
+    const reading = readings[index]
+    const without = misfit(
+      readings.filter((_, other) => other !== index),
+      priors,
+    )
+    return { index, without, precision: reading === undefined ? 0 : Math.abs(reading.flow) / reading.sigma }
+  })
+  scored.sort((a, b) =>
+    Math.abs(a.without - b.without) < 1 ? a.precision - b.precision : a.without - b.without,
+  )
+  return scored[0]?.index ?? 0
+}
+
+function subsets(count: number, size: number, from = 0): number[][] {
+  if (size === 0) return [[]]
+  const found: number[][] = []
+  for (let first = from; first <= count - size; first += 1) {
+    for (const rest of subsets(count, size - 1, first + 1)) found.push([first, ...rest])
+  }
+  return found
+}

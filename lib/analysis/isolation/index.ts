@@ -1,0 +1,6 @@
+export * from './isolate'
+export * from './minutes-needed'
+export * from './prior'
+export * from './test-points'
+export type * from './types'
+export { volumeOf } from './readings'
