@@ -11,6 +11,7 @@ export type { SimTruth } from '@/simulator/truth'
 export { CLEAN, defaultBoat, flowForBoatHold } from '@/simulator/spec'
 export { loggerClock, sendableAt } from '@/simulator/logger'
 export { joinTruths } from '@/simulator/truth'
+export { randomBoat, type RandomBoatKind } from '@/simulator/random-boat'
 
 export type SimulateOptions = {
   /** The `end` of an earlier stretch: goes on from there, and `fromMs` must be that stretch's `toMs`. */
