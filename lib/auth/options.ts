@@ -1,0 +1,73 @@
+import type { AuthOptions } from 'next-auth'
+import CredentialsProvider from 'next-auth/providers/credentials'
+import { env } from '@/lib/env'
+import { log } from '@/lib/log'
+import { addressOf } from './address'
+import { sessionCookieName } from './cookie'
+import { SESSION_SECONDS, signIn, signOut } from './sign-in'
+import { sessionIsLive } from './who'
+
+const text = (value: unknown): string => (typeof value === 'string' ? value : '')
+
+/** next-auth's part: the credentials flow and the cookie. Who somebody is is read from the session row, not from here. */
+export function authOptions(): AuthOptions {
+  return {
+    secret: env().secret,
+    session: { strategy: 'jwt', maxAge: SESSION_SECONDS },
+    useSecureCookies: env().appUrl.startsWith('https://'),
+    cookies: {
+      sessionToken: {
+        name: sessionCookieName(),
+        options: {
+          httpOnly: true,
+          sameSite: 'lax',
+          path: '/',
+          secure: env().appUrl.startsWith('https://'),
+        },
+      },
+    },
+    pages: { signIn: '/sign-in', error: '/sign-in' },
+    providers: [
+      CredentialsProvider({
+        name: 'password',
+        credentials: { email: { label: 'E-mail', type: 'email' }, password: { type: 'password' } },
+        authorize: async (credentials, request) => {
+          // The text of an error thrown here would end up in a redirect's address.
+          try {
+            const headers = new Headers(request.headers)
+            const signedIn = await signIn({
+              email: text(credentials?.email),
+              password: text(credentials?.password),
+              from: addressOf(headers),
+              userAgent: headers.get('user-agent'),
+              at: new Date(),
+            })
+            if (signedIn === null) return null
+            const { personId: id, name, email, sessionId } = signedIn
+            return { id, name, email, sessionId }
+          } catch (error) {
+            log.error({ err: error }, 'sign-in failed')
+            return null
+          }
+        },
+      }),
+    ],
+    callbacks: {
+      jwt: async ({ token, user }) => {
+        if (user !== undefined && 'sessionId' in user) return { ...token, sid: user.sessionId }
+        if (!(await sessionIsLive(token.sid))) throw new Error('the session has ended')
+        return token
+      },
+    },
+    events: {
+      signOut: async ({ token }) => {
+        if (typeof token?.sid === 'string') await signOut(token.sid, new Date())
+      },
+    },
+    logger: {
+      error: (code) => log.debug({ code }, 'next-auth'),
+      warn: (code) => log.debug({ code }, 'next-auth'),
+      debug: () => {},
+    },
+  }
+}

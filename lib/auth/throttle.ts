@@ -1,0 +1,78 @@
+import { RateLimiterMemory, RateLimiterPostgres, RateLimiterRes } from 'rate-limiter-flexible'
+import { runThrottleStatement } from '@/db/queries/throttle'
+import { asIngest } from '@/db/roles'
+import { Problem } from '@/lib/problem'
+
+/** A limit shared by all web processes; should its table be out of reach, each process counts for itself. */
+function limiter(keyPrefix: string, points: number, durationSeconds: number): RateLimiterPostgres {
+  return new RateLimiterPostgres({
+    storeClient: {
+      query: (statement: { text: string; values?: unknown[] }) =>
+        asIngest((trx) => runThrottleStatement(trx, statement)),
+    },
+    tableName: 'throttle',
+    tableCreated: true,
+    clearExpiredByTimeout: false,
+    keyPrefix,
+    points,
+    duration: durationSeconds,
+    insuranceLimiter: new RateLimiterMemory({ keyPrefix, points, duration: durationSeconds }),
+  })
+}
+
+const QUARTER_HOUR = 900
+/** Guesses at one account from one address; at one account from anywhere; from one address at anything. */
+const pair = limiter('pair', 10, QUARTER_HOUR)
+const account = limiter('account', 50, QUARTER_HOUR)
+const address = limiter('address', 200, QUARTER_HOUR)
+
+async function take(limit: RateLimiterPostgres, key: string): Promise<number> {
+  try {
+    await limit.consume(key)
+    return 0
+  } catch (refusal) {
+    if (refusal instanceof RateLimiterRes) return Math.max(1, Math.ceil(refusal.msBeforeNext / 1000))
+    throw refusal
+  }
+}
+
+const keysOf = (email: string, from: string): [RateLimiterPostgres, string][] => {
+  const name = email.trim().toLowerCase().slice(0, 120)
+  return [
+    [pair, `${name}|${from}`.slice(0, 200)],
+    [account, name],
+    [address, from.slice(0, 64)],
+  ]
+}
+
+/**
+ * Counts a try before its password is looked at, so that many at once don't slip through.
+ * @returns seconds to wait, 0 when the try may go on. The same for addresses without an account.
+ */
+export async function countTry(email: string, from: string): Promise<number> {
+  let wait = 0
+  for (const [limit, key] of keysOf(email, from)) wait = Math.max(wait, await take(limit, key))
+  return wait
+}
+
+/** A right password gives its try back and clears the account's count from this address. */
+export async function forgiveTry(email: string, from: string): Promise<void> {
+  const [own, ...others] = keysOf(email, from)
+  if (own !== undefined) await own[0].delete(own[1])
+  for (const [limit, key] of others) await limit.reward(key)
+}
+
+const guesses = limiter('guess', 30, QUARTER_HOUR)
+
+/** Stops the trying of codes and one-time secrets. @throws Problem `too-many-requests` */
+export async function countGuess(what: string, from: string): Promise<void> {
+  const wait = await take(guesses, `${what}|${from}`.slice(0, 200))
+  if (wait > 0) throw tooMany(wait)
+}
+
+export const tooMany = (waitSeconds: number): Problem =>
+  new Problem(
+    'too-many-requests',
+    `Too many tries. Try again in ${Math.ceil(waitSeconds / 60)} min, or set a new password.`,
+    { headers: { 'retry-after': String(waitSeconds) } },
+  )
