@@ -1,9 +1,10 @@
+import { chiSquaredUpper } from '@/lib/analysis/statistics'
 import type { Reading } from './readings'
 import { misfit } from './shares'
 import type { Contradiction } from './types'
 
-/** χ² beyond which tests cannot all be right (one in a thousand). */
-const CONTRADICTORY = 10.83
+/** Tests that would differ as much by chance once in ten thousand cannot all be right. */
+const CONTRADICTORY = 1e-4
 const MOST_TOGETHER = 3
 
 /**
@@ -14,15 +15,16 @@ export function findContradictions(
   readings: readonly Reading[],
   priors: ReadonlyMap<string, number>,
 ): Contradiction[] {
-  if (misfit(readings, priors) <= CONTRADICTORY) return []
+  const contradict = (some: readonly Reading[]) =>
+    some.length > 1 && chiSquaredUpper(misfit(some, priors), some.length - 1) < CONTRADICTORY
   const found: number[][] = []
   for (let size = 2; size <= Math.min(MOST_TOGETHER, readings.length); size += 1) {
     for (const set of subsets(readings.length, size)) {
       if (found.some((known) => known.every((index) => set.includes(index)))) continue
-      if (misfit(pick(readings, set), priors) > CONTRADICTORY) found.push(set)
+      if (contradict(pick(readings, set))) found.push(set)
     }
   }
-  const sets = found.length > 0 ? found : [readings.map((_, index) => index)]
+  const sets = found.length === 0 && contradict(readings) ? [readings.map((_, index) => index)] : found
   return sets.map((tests) => ({ tests, repeat: worstOf(tests, readings, priors) }))
 }
 

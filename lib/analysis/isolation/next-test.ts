@@ -1,7 +1,7 @@
 import { GAUGE_RESOLUTION_PA } from '@/lib/analysis/leak-down'
 import { normalCdf } from '@/lib/analysis/statistics'
 import { groupBySets } from './groups'
-import { waitSeconds } from './minutes-needed'
+import { TOLD_APART, waitSeconds } from './minutes-needed'
 import { type Reading, volumeOf } from './readings'
 import { flowScale } from './shares'
 import type { IsolationPart, NextTest, PossibleTest, Share, Suspect } from './types'
@@ -15,6 +15,10 @@ const EXPLAINED = 0.7
 const KNOWN_WITHIN = 0.25
 /** A test is not made again once it tells this share of the boat's flow from nought. */
 const PRECISE = 1 / 6
+/** Share of the boat's flow to be told from nought where a second leak has to be measured. */
+const TOLD_FOR_SECOND = 1 / 10
+/** What every test costs besides: breaker off and on, draw-down, settling, wiping up (judged). */
+const ROUND_MINUTES = 15
 const WHOLE_MINUTES = 2
 const LONGEST_WHOLE_SECONDS = 8 * 3600
 
@@ -53,18 +57,21 @@ export function chooseNextTest(state: NextTestState): NextTest | null {
   if (search === null) return null
   const candidates = state.possible
     .filter((test) => !isDone(test, state, flow))
-    .map((test) => scoreTest(test, search.weights, state, flow))
+    .map((test) => scoreTest(test, search, state, flow))
     .filter((scored) => scored !== null)
     .filter((scored) => scored.bits > 0.01)
-    .sort((a, b) => b.bits / b.test.minutes - a.bits / a.test.minutes)
+    .sort((a, b) => b.bits / (b.test.minutes + ROUND_MINUTES) - a.bits / (a.test.minutes + ROUND_MINUTES))
   const best = candidates[0]
   if (best === undefined) return null
   const why = reasonFor(best.test, best.likelyIn, best.suspectsIn, best.suspectsOut, state.parts)
   return { ...best.test, why: search.second ? SECOND_LEAK + why : why }
 }
 
-/** How likely each part is what is still looked for; null when nothing is. */
-function searchWeights(state: NextTestState): { weights: Map<string, number>; second: boolean } | null {
+/** How likely each part is what is still looked for, the one leak or what it does not explain. */
+type Search = { weights: Map<string, number>; second: boolean }
+
+/** Null when nothing is looked for any more. */
+function searchWeights(state: NextTestState): Search | null {
   const groups = inseparableGroups(state)
   const sum = (group: readonly string[], of: (key: string) => number) =>
     group.reduce((total, key) => total + of(key), 0)
@@ -86,11 +93,11 @@ function searchWeights(state: NextTestState): { weights: Map<string, number>; se
 
 function scoreTest(
   test: PossibleTest,
-  weights: ReadonlyMap<string, number>,
+  { weights, second }: Search,
   state: NextTestState,
   flow: number,
 ): { test: NextTest; bits: number; likelyIn: number; suspectsIn: string[]; suspectsOut: string[] } | null {
-  const timed = timeTest(test, state, flow)
+  const timed = timeTest(test, state, flow, second ? TOLD_FOR_SECOND : TOLD_APART)
   if (timed === null) return null
   const keys = new Set(test.parts)
   const likely = [...weights].filter(([, weight]) => weight > 0.01).sort((a, b) => b[1] - a[1])
@@ -111,6 +118,7 @@ function timeTest(
   test: PossibleTest,
   state: NextTestState,
   flow: number,
+  toldApart: number,
 ): { test: NextTest; separation: number } | null {
   const volume = state.parts.reduce(
     (sum, part) => (test.parts.includes(part.key) ? sum + part.volumeM3 : sum),
@@ -118,7 +126,7 @@ function timeTest(
   )
   if (!(volume > 0)) return null
   const resolutionPa = handResolutionPa(state)
-  const seconds = waitSeconds(volume, resolutionPa, flow)
+  const seconds = waitSeconds(volume, resolutionPa, flow, toldApart)
   const waitMinutes = Math.max(1, Math.ceil(seconds / 60))
   const sigma = (volume * resolutionPa) / Math.sqrt(6) / seconds
   return {
