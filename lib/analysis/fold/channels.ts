@@ -1,0 +1,77 @@
+import {
+  CARRY_MS,
+  DEFAULT_INTERVAL_SECONDS,
+  GAP_AT_LEAST_MS,
+  GAP_INTERVALS,
+  LAG_RESTART_MS,
+  PUMP_AWAITED_MS,
+  PUMP_LOST_MS,
+  SECOND,
+} from './constants'
+import type { Channels, FoldState } from './state'
+import { LAG_SECONDS, type Instant, type Sample } from './types'
+
+/** Silence after which a hold is broken, ms. */
+export function gapLimitMs(state: FoldState): number {
+  const interval = state.fitting?.intervalSeconds ?? DEFAULT_INTERVAL_SECONDS
+  return Math.max(GAP_AT_LEAST_MS, GAP_INTERVALS * interval * SECOND)
+}
+
+/** Takes in air, barometer and supply, and lets the lagged copies of the air follow. */
+export function takeWeather(channels: Channels, sample: Sample): void {
+  if (sample.airC !== null) {
+    const [lag0, lag1] = channels.laggedAirC
+    const known = channels.airAt !== null && sample.at - channels.airAt <= LAG_RESTART_MS
+    if (known && channels.airC !== null && channels.airAt !== null && lag0 !== null && lag1 !== null) {
+      const seconds = (sample.at - channels.airAt) / SECOND
+      channels.laggedAirC[0] = follow(lag0, channels.airC, sample.airC, seconds, LAG_SECONDS[0])
+      channels.laggedAirC[1] = follow(lag1, channels.airC, sample.airC, seconds, LAG_SECONDS[1])
+    } else {
+      channels.laggedAirC[0] = sample.airC
+      channels.laggedAirC[1] = sample.airC
+    }
+    channels.airC = sample.airC
+    channels.airAt = sample.at
+  }
+  if (sample.barometerPa !== null) {
+    channels.barometerPa = sample.barometerPa
+    channels.barometerAt = sample.at
+  }
+  if (sample.supplyV !== null) {
+    channels.supplyV = sample.supplyV
+    channels.supplyAt = sample.at
+  }
+}
+
+/** First-order lag behind air that moved in a straight line over `seconds` (exact). */
+function follow(lagC: number, fromC: number, toC: number, seconds: number, tau: number): number {
+  const trailing = ((toC - fromC) * tau) / seconds
+  return toC - trailing + (lagC - fromC + trailing) * Math.exp(-seconds / tau)
+}
+
+export const airIsFresh = (channels: Channels, at: Instant): boolean =>
+  channels.airAt !== null && at - channels.airAt <= CARRY_MS
+export const barometerIsFresh = (channels: Channels, at: Instant): boolean =>
+  channels.barometerAt !== null && at - channels.barometerAt <= CARRY_MS
+
+/** How the edges are told at this sample: by the pump channel, or by the vacuum's turning points. */
+export function readsPump(state: FoldState, sample: Sample): boolean {
+  if (sample.pumpOn !== null) return true
+  const { pumpAt } = state.channels
+  if (pumpAt !== null) return sample.at - pumpAt <= PUMP_LOST_MS
+  const fitting = state.fitting
+  return fitting !== null && fitting.pump && sample.at - fitting.at <= PUMP_AWAITED_MS
+}
+
+/**
+ * How far an edge seen at this sample may be off, s: the spacing before it; 1 s for a record that a logger
+ * sent at the edge itself, told by its coming sooner than the rhythm and out of step with the one before.
+ */
+export function edgeUncertaintySeconds(state: FoldState, at: Instant): number {
+  if (state.sampleAt === null) return 0
+  const spacing = at - state.sampleAt
+  const interval = (state.fitting?.intervalSeconds ?? 0) * SECOND
+  const outOfStep = Math.abs(spacing - state.spacingMs) > 0.1 * spacing
+  const seconds = spacing / SECOND
+  return spacing < 0.9 * interval && outOfStep ? Math.min(1, seconds) : seconds
+}

@@ -1,0 +1,72 @@
+import {
+  DEFAULT_CUT_IN_PA,
+  DEFAULT_CUT_OUT_PA,
+  DEFAULT_SETTLING_PA,
+  RING_ENOUGH,
+  RING_LENGTH,
+} from './constants'
+import type { FoldState } from './state'
+
+/** Adds a value to a ring, dropping the oldest beyond `length`. Values are rounded to 0.01. */
+export function pushRing(ring: number[], value: number, length = RING_LENGTH): void {
+  if (!Number.isFinite(value)) return
+  ring.push(Math.round(value * 100) / 100)
+  if (ring.length > length) ring.shift()
+}
+
+/** Middle of a short list; null for none. */
+export function ringMedian(ring: readonly number[]): number | null {
+  const sorted = [...ring].sort((a, b) => a - b)
+  const middle = sorted[sorted.length >> 1]
+  if (middle === undefined) return null
+  if (sorted.length % 2 === 1) return middle
+  return (middle + (sorted[(sorted.length >> 1) - 1] ?? middle)) / 2
+}
+
+/** A ring's median once it has five values, else the set-up's figure, else what there is, else the default. */
+function learnedOr(ring: readonly number[], setPa: number | null, defaultPa: number): number {
+  if (ring.length >= RING_ENOUGH) return ringMedian(ring) ?? defaultPa
+  return setPa ?? ringMedian(ring) ?? defaultPa
+}
+
+export const learnedCutInPa = (state: FoldState): number =>
+  learnedOr(state.rings.cutInPa, state.settings.cutInPa, DEFAULT_CUT_IN_PA)
+export const learnedCutOutPa = (state: FoldState): number =>
+  learnedOr(state.rings.cutOutPa, state.settings.cutOutPa, DEFAULT_CUT_OUT_PA)
+export const learnedSettledPa = (state: FoldState): number =>
+  learnedOr(state.rings.settledPa, null, learnedCutOutPa(state) - DEFAULT_SETTLING_PA)
+
+/** Whether any figure for the cut-in exists, learned or set. */
+export const cutInIsKnown = (state: FoldState): boolean =>
+  state.rings.cutInPa.length > 0 || state.settings.cutInPa !== null
+
+export interface Learned {
+  cutOutPa: number
+  settledPa: number
+  cutInPa: number
+  /** Usual recharge over the band between cut-in and cut-out; null until seen. */
+  rechargePaPerSecond: number | null
+  /** Usual length of a leak run (of any run where there is no vacuum channel). */
+  runSeconds: number | null
+  /** How many readings stand behind each; under five the set-up's figure serves. */
+  counts: { cutOut: number; settled: number; cutIn: number; recharge: number; run: number }
+}
+
+/** What the system has taught: medians of the last 21 readings of each kind. */
+export function learned(state: FoldState): Learned {
+  const { rings } = state
+  return {
+    cutOutPa: learnedCutOutPa(state),
+    settledPa: learnedSettledPa(state),
+    cutInPa: learnedCutInPa(state),
+    rechargePaPerSecond: ringMedian(rings.rechargePaPerSecond),
+    runSeconds: ringMedian(rings.runSeconds),
+    counts: {
+      cutOut: rings.cutOutPa.length,
+      settled: rings.settledPa.length,
+      cutIn: rings.cutInPa.length,
+      recharge: rings.rechargePaPerSecond.length,
+      run: rings.runSeconds.length,
+    },
+  }
+}

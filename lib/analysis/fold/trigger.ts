@@ -1,0 +1,71 @@
+import { INHG, RING_ENOUGH, START_FALL_PA } from './constants'
+import { noiseFloorPa } from './fall'
+import { learnedCutInPa, ringMedian } from './rings'
+import type { FoldState, OpenRun } from './state'
+import type { Trigger } from './types'
+
+/** A run over, as far as its trigger is concerned; `seconds` null where its stop was not seen. */
+export interface RunEnd {
+  seconds: number | null
+  uncertaintySeconds: number
+}
+
+/** What started a run: see each rule. Also tells when only its length spoke for a flush. */
+export function decideTrigger(
+  state: FoldState,
+  run: OpenRun,
+  end: RunEnd,
+): { trigger: Trigger; byLength: boolean } {
+  const plain = (trigger: Trigger) => ({ trigger, byLength: false })
+  if (state.settings.kind === 'on-demand') return plain('flush')
+  if (run.fromOff) return plain('startup')
+  if (!run.startSeen) return plain('unknown')
+  if (run.startPa === null && run.fallPa === null && run.topPa === null) {
+    return plain(triggerByLengthAlone(state, end))
+  }
+  const floor = Math.max(START_FALL_PA, noiseFloorPa(state))
+  if (run.fallPa !== null && run.fallPa > floor) return plain('flush')
+  // A pump that is on raises the vacuum: what still falls is a flush that began before the start.
+  if (run.startPa !== null && run.lowPa !== null && run.startPa - run.lowPa > floor) return plain('flush')
+  if (startsTooHigh(state, run)) return plain('flush')
+  if (isOverLong(state, end)) return { trigger: 'flush', byLength: true }
+  return plain('leak')
+}
+
+/**
+ * Samples too sparse to show the fall: the vacuum before the start was so far over the cut-in that no leak can
+ * have brought it there.
+ */
+function startsTooHigh(state: FoldState, run: OpenRun): boolean {
+  if (run.beforePa === null || run.startSpacingMs < 20_000 || run.edgeUncertaintySeconds <= 2) return false
+  if (state.rings.cutInPa.length < RING_ENOUGH && state.settings.cutInPa === null) return false
+  const leaked = 1.5 * state.slopePaPerSecond * (run.startSpacingMs / 1000)
+  return run.beforePa - leaked > learnedCutInPa(state) + 0.35 * INHG
+}
+
+/** Longer than the tight cluster of leak recharges. */
+function isOverLong(state: FoldState, end: RunEnd): boolean {
+  const ring = state.rings.runSeconds
+  const usual = ringMedian(ring)
+  if (end.seconds === null || usual === null || ring.length < RING_ENOUGH) return false
+  const spread = 1.4826 * (ringMedian(ring.map((seconds) => Math.abs(seconds - usual))) ?? 0)
+  if (spread > 0.1 * usual) return false
+  return end.seconds - end.uncertaintySeconds > usual + Math.max(2, 0.12 * usual, 4 * spread)
+}
+
+/**
+ * No vacuum channel: leak runs refill one differential and are all alike, so the lowest tight cluster of
+ * lengths is theirs; longer runs were flushes. Unknown until five of at least eight lie within 5 %.
+ */
+function triggerByLengthAlone(state: FoldState, end: RunEnd): Trigger {
+  const lengths = state.rings.runSeconds
+  if (end.seconds === null || lengths.length < 8) return 'unknown'
+  const sorted = [...lengths].sort((a, b) => a - b)
+  const size = Math.max(5, Math.ceil(0.25 * sorted.length))
+  const from = sorted.findIndex((low, i) => (sorted[i + size - 1] ?? Infinity) <= low * 1.05 + 0.5)
+  if (from < 0) return 'unknown'
+  const usual = ringMedian(sorted.slice(from, from + size)) ?? 0
+  if (end.uncertaintySeconds > 0.1 * usual) return 'unknown'
+  if (Math.abs(end.seconds - usual) <= 0.05 * usual + 1) return 'leak'
+  return end.seconds > 1.12 * usual + 2 ? 'flush' : 'unknown'
+}
