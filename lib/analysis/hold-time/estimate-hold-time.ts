@@ -1,4 +1,5 @@
 import { holdTimeFromLegs } from './from-legs'
+import { holdTimeFromLengths } from './from-lengths'
 import { holdTimeFromShortHolds } from './from-short-holds'
 import type { HoldTimeEstimate, HoldTimeInput } from './types'
 
@@ -9,5 +10,5 @@ import type { HoldTimeEstimate, HoldTimeInput } from './types'
  */
 export function estimateHoldTime(input: HoldTimeInput): HoldTimeEstimate | null {
   if (!input.standingVacuum) return null
-  return holdTimeFromShortHolds(input) ?? holdTimeFromLegs(input)
+  return holdTimeFromShortHolds(input) ?? holdTimeFromLegs(input) ?? holdTimeFromLengths(input)
 }

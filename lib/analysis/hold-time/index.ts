@@ -1,4 +1,6 @@
 export * from './estimate-hold-time'
 export * from './from-legs'
+export * from './from-lengths'
 export * from './from-short-holds'
+export * from './label-holds'
 export * from './types'

@@ -42,6 +42,12 @@ export interface OutlookInput {
   seesFlushes: boolean
 }
 
+export interface RunExpected {
+  at: Instant | null
+  earliest: Instant
+  latest: Instant
+}
+
 export interface Outlook {
   at: Instant
   night: Night & { hours: number }
@@ -52,7 +58,13 @@ export interface Outlook {
   expectedRuns: number | null
   /** Expected unprompted runs if flushed last thing. */
   expectedRunsIfFlushedLast: number | null
-  firstRun: { at: Instant | null; earliest: Instant; latest: Instant } | null
+  /**
+   * First unprompted run at or after both `at` and the start of quiet hours. With the phase known `at` assumes
+   * that nobody flushes and may lie after the night; with the phase open a span (5 to 95 %), null under 5 %.
+   */
+  firstRun: RunExpected | null
+  /** The very next run from now if nobody flushes, whatever the hour; null while learning or with the pump on. */
+  nextRun: RunExpected | null
   basis: 'phase-known' | 'phase-open' | 'learning'
   aboard: AboardWord
   /** Hold time the chances rest on, and when what they rest on was last heard. */
@@ -87,6 +99,16 @@ export type WarningReason =
 export interface WarningDecision {
   warn: boolean
   reason: WarningReason
+}
+
+export interface NightInput {
+  night: Pick<Night, 'from' | 'to'>
+  runs: readonly RunRow[]
+  holds: readonly HoldRow[]
+  /** Whether a run was foretold (a warning sent, or the chance given over one half). */
+  foretold: boolean
+  /** Newest instant heard of when the night is scored. */
+  heardUntil: Instant
 }
 
 export type NightOutcome = 'hit' | 'false' | 'missed' | 'quiet' | 'unknown'

@@ -1,0 +1,7 @@
+export * from './aboard'
+export * from './habit'
+export * from './local-time'
+export * from './outlook-of'
+export * from './score-night'
+export * from './types'
+export * from './warns'
