@@ -10,7 +10,7 @@ import type { Figures, FiguresInput, HoldTimeFigure, LeakRateFigure } from './ty
 /**
  * All figures of one system as of `at`, from its rows, the head of its fold and what people said. Pure: the
  * same input gives the same answer. With no rows the state says what is missing and every figure is null.
- * @example figuresOf({ at, rows, open, current, learned, settings, statement: null, lastHeardAt: at, risePa: null })
+ * @example figuresOf(figuresInput(state, { at, rows, settings, lastHeardAt: at }))
  */
 export function figuresOf(input: FiguresInput): Figures {
   const { at, rows, open, learned, settings } = input

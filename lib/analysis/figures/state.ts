@@ -1,16 +1,9 @@
-import { PA_PER_INHG, formatDuration, formatVacuum } from '@/shared/units'
+import { formatDuration, formatVacuum } from '@/shared/units'
 import type { HoldTimeEstimate } from '../hold-time'
-import { median } from '../statistics'
 import type { FiguresInput, SystemState } from './types'
 
 /** Under this hold time a system short-cycles. */
 export const SHORT_CYCLING_SECONDS = 600
-const RUNNING_ON_LEAST_SECONDS = 300
-/** A rise under this in two minutes is none (twice a logger's step). */
-const NO_RISE_PA = 70
-const OFF_UNDER_CUT_IN_PA = PA_PER_INHG
-const OFF_AFTER_SECONDS = 600
-
 export interface StateFinding {
   state: SystemState
   since: number | null
@@ -39,48 +32,23 @@ function said({ statement }: FiguresInput): StateFinding | null {
   return { state: statement.value, since: statement.since, reason: words }
 }
 
-/** The last instant anything is known of. */
-const knownUntil = ({ at, lastHeardAt }: FiguresInput): number => Math.min(at, lastHeardAt ?? at)
-
-function runningOn(input: FiguresInput): StateFinding | null {
-  const { run } = input.open
-  if (run === null || run.interrupted) return null
-  const seconds = (knownUntil(input) - run.startedAt) / 1000
-  const needed = neededSeconds(input)
-  const limit = Math.max(RUNNING_ON_LEAST_SECONDS, 2 * (needed ?? RUNNING_ON_LEAST_SECONDS))
-  if (seconds < limit || (input.risePa !== null && input.risePa > NO_RISE_PA)) return null
-  const usual = needed === null ? '' : `, ${formatDuration(needed)} would do`
-  return { state: 'running-on', since: run.startedAt, reason: `on for ${formatDuration(seconds)}${usual}` }
-}
-
-/** What the learned recharge needs from the vacuum at the run's start; by usual run lengths without vacuum. */
-function neededSeconds({ open, learned, rows }: FiguresInput): number | null {
-  const fromPa = open.run?.vacuumAtStartPa ?? null
-  if (fromPa !== null && learned.cutOutPa !== null && learned.rechargePaPerSecond !== null) {
-    return Math.max(0, learned.cutOutPa - fromPa) / learned.rechargePaPerSecond
-  }
-  const ended = rows.runs.filter((run) => !run.interrupted && run.trigger !== 'startup')
-  return median(ended.map((run) => (run.stoppedAt - run.startedAt) / 1000))
-}
-
-/** Said to be off, or vacuum an inch under the cut-in for ten minutes and no start. */
-function off(input: FiguresInput): StateFinding | null {
-  if (input.statement?.value === 'off') {
-    return { state: 'off', since: input.statement.since, reason: 'said to be switched off' }
-  }
-  const { current, learned, open, rows } = input
-  if (open.run !== null || open.hold !== null || current?.pumpOn === true) return null
-  const vacuumPa = current?.vacuumPa ?? null
-  if (vacuumPa === null || learned.cutInPa === null) return null
-  if (vacuumPa > learned.cutInPa - OFF_UNDER_CUT_IN_PA) return null
-  const ends = [...rows.holds.map((hold) => hold.endedAt), ...rows.runs.map((run) => run.stoppedAt)]
-  const since = ends.length === 0 ? null : Math.max(...ends)
-  if (since !== null && knownUntil(input) - since < OFF_AFTER_SECONDS * 1000) return null
+function runningOn({ open, condition, at, lastHeardAt }: FiguresInput): StateFinding | null {
+  if (condition.runningOnSince === null || open.run === null) return null
+  const seconds = (Math.min(at, lastHeardAt ?? at) - open.run.startedAt) / 1000
   return {
-    state: 'off',
-    since,
-    reason: `${formatVacuum(vacuumPa, 'inHg')}, under the cut-in, and the pump does not start`,
+    state: 'running-on',
+    since: open.run.startedAt,
+    reason: `the pump has been on for ${formatDuration(seconds)} and the vacuum does not rise`,
   }
+}
+
+function off({ statement, condition, current }: FiguresInput): StateFinding | null {
+  if (statement?.value === 'off') {
+    return { state: 'off', since: statement.since, reason: 'said to be switched off' }
+  }
+  if (condition.offSince === null) return null
+  const vacuum = formatVacuum(current?.vacuumPa, 'inHg')
+  return { state: 'off', since: condition.offSince, reason: `at ${vacuum}, and the pump does not start` }
 }
 
 /** The state by hold time alone; a bound that does not reach the limit says nothing. */

@@ -65,11 +65,13 @@ export interface FiguresInput {
   current: CurrentReading | null
   learned: LearnedFigures
   settings: FiguresSettings
-  /**
-   * With the pump on: vacuum now minus vacuum two minutes before, Pa, from the samples; null = not measured, and
-   * the length of the run alone decides whether it runs on.
-   */
-  risePa: number | null
+  /** What the state of the fold shows besides rows (`conditionOf`). */
+  condition: {
+    /** Vacuum far under the cut-in without a start since then. */
+    offSince: Instant | null
+    /** From when the run in progress was running on. */
+    runningOnSince: Instant | null
+  }
   /** What people say of the system, in force at `at`. */
   statement: { value: StatementValue; since: Instant } | null
   /** Newest receipt of anything from its loggers, or newest sample where that is later; null = never heard. */

@@ -1,2 +1,1 @@
-export * from './leg-rate'
 export * from './merge-bins'
