@@ -1,0 +1,9 @@
+import { handle } from '@/lib/api/handle'
+import { methods } from '@/lib/api/methods'
+import * as operations from '@/lib/api/operations/people'
+import { changeMe, getMe } from '@/lib/people/me'
+
+export const { GET, POST, PUT, PATCH, DELETE } = methods({
+  GET: handle(operations.getMe, ({ person }) => getMe(person)),
+  PATCH: handle(operations.changeMe, ({ person, body }) => changeMe(person, body)),
+})

@@ -1,0 +1,79 @@
+import type { Trx } from '@/db/roles'
+import type { HoldTime, NoticeKind, StatementValue } from '@/shared/schemas'
+
+export interface FleetSource {
+  vesselId: string
+  systemId: string
+  name: string
+  systemName: string
+  harbour: string | null
+  berth: string | null
+  timeZone: string
+  utcOffsetSeconds: number
+  state: string | null
+  /** Epoch milliseconds, as the figures keep it. */
+  sinceMs: number | null
+  holdTime: HoldTime | null
+  moving: unknown
+  lastHeardAt: Date | null
+  limitSeconds: number
+  aimSeconds: number
+  silenceSeconds: number
+  statement: { value: StatementValue; from: string } | null
+  chance: number | null
+  chanceIfFlushedLast: number | null
+  expectedRuns: number | null
+  hasOutlook: boolean
+  openNotices: NoticeKind[]
+  nextVisitAt: Date | null
+}
+
+/**
+ * One row a system of all that a person sees, without touching samples or rows of the record: the figures kept on
+ * system_state, the outlook of the night that is not yet over, open notices, the next planned visit.
+ */
+export async function readFleet(trx: Trx, at: Date, vesselId: string | null): Promise<FleetSource[]> {
+  const { rows } = await trx.raw<{ rows: FleetSource[] }>(
+    `with offsets as (
+       select time_zone, extract(epoch from (cast(:at as timestamptz) at time zone time_zone)
+         - (cast(:at as timestamptz) at time zone 'UTC'))::int as seconds
+       from (select distinct time_zone from vessel) z
+     ), settings as (
+       select distinct on (system_id) system_id, limit_seconds, aim_seconds, silence_seconds from setting
+       where in_force_from <= :at order by system_id, in_force_from desc
+     ), said as (
+       select distinct on (system_id) system_id, json_build_object('value', value, 'from', from_at) as statement
+       from statement where system_id is not null and from_at <= :at and (until_at is null or until_at > :at)
+       order by system_id, from_at desc, id desc
+     ), nights as (
+       select distinct on (system_id) system_id, chance, chance_if_flushed_last, expected_runs from outlook
+       where quiet_to > :at and given_at <= :at order by system_id, quiet_to, given_at desc
+     ), open_notices as (
+       select system_id, array_agg(kind order by opened_at) as kinds from notice where closed_at is null group by system_id
+     ), planned as (
+       select vessel_id, system_id, min(planned_for) as at from visit
+       where status = 'planned' and planned_for is not null group by vessel_id, system_id
+     )
+     select v.id as "vesselId", s.id as "systemId", v.name, s.name as "systemName", v.harbour, v.berth,
+       v.time_zone as "timeZone", o.seconds as "utcOffsetSeconds",
+       st.figures->>'state' as state, (st.figures->>'since')::float8 as "sinceMs", st.figures->'holdTime' as "holdTime",
+       st.figures->'moving' as moving, st.last_heard_at as "lastHeardAt",
+       coalesce(g.limit_seconds, 10800) as "limitSeconds", coalesce(g.aim_seconds, 28800) as "aimSeconds",
+       coalesce(g.silence_seconds, 21600) as "silenceSeconds", t.statement,
+       n.chance, n.chance_if_flushed_last as "chanceIfFlushedLast", n.expected_runs as "expectedRuns",
+       n.system_id is not null as "hasOutlook", coalesce(k.kinds, '{}') as "openNotices",
+       (select min(p.at) from planned p where p.vessel_id = v.id and (p.system_id is null or p.system_id = s.id))
+         as "nextVisitAt"
+     from vessel v
+     join system s on s.vessel_id = v.id
+     join offsets o on o.time_zone = v.time_zone
+     left join system_state st on st.system_id = s.id
+     left join settings g on g.system_id = s.id
+     left join said t on t.system_id = s.id
+     left join nights n on n.system_id = s.id
+     left join open_notices k on k.system_id = s.id
+     where cast(:vessel as bigint) is null or v.id = :vessel`,
+    { at, vessel: vesselId },
+  )
+  return rows
+}
