@@ -39,6 +39,7 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
   const intervalMs = spec.logger.intervalSeconds * MS_PER_SECOND
   const phaseMs = (hash32(spec.seed, 41) % spec.logger.intervalSeconds) * MS_PER_SECOND
   const sampleTime = (index: number): number => clock.trueAt(index * intervalMs + phaseMs)
+  const sampleAfter = (at: number): number => Math.ceil((clock.says(at) - phaseMs) / intervalMs)
 
   // --- the surroundings ---------------------------------------------------------------------------
 
@@ -59,6 +60,11 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
   // --- state --------------------------------------------------------------------------------------
 
   const state: BoatState = resumed ?? startingState()
+  if (state.intervalSeconds !== spec.logger.intervalSeconds) {
+    // The logger was asked for another rhythm since.
+    state.nextSample = sampleAfter(state.t)
+    state.intervalSeconds = spec.logger.intervalSeconds
+  }
   let around = surroundings(state.t, state.wallC)
   let upcoming: OpeningEvent | null = null
   let searchedTo = state.eventCursor
@@ -73,7 +79,8 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
       wallC,
       filledM3: spec.tank.filledAtStartM3,
       conditions: spec.leaks.map(() => freshCondition()),
-      nextSample: Math.ceil((clock.says(fromMs) - phaseMs) / intervalMs),
+      nextSample: sampleAfter(fromMs),
+      intervalSeconds: spec.logger.intervalSeconds,
       random: {
         switch: randomState(spec.seed, 1),
         seats: randomState(spec.seed, 2),
@@ -270,7 +277,13 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
       supplyV: supplyAt(at),
     }
     const stuck = inSpans(spec.logger.stuck, at) ? state.lastVacuumReadPa : null
-    const sample: SimSample = takeReading(spec.logger, state.random.sensor, said, truth, stuck)
+    const slow = spec.logger.slowChannelSeconds
+    const sample: SimSample = takeReading(spec.logger, state.random.sensor, said, truth, {
+      stuckVacuumPa: stuck,
+      withSlowChannels:
+        slow <= 0 ||
+        (!isEdge && (state.nextSample * spec.logger.intervalSeconds) % slow < spec.logger.intervalSeconds),
+    })
     state.lastSaidAt = said
     if (sample.vacuumPa !== null) state.lastVacuumReadPa = sample.vacuumPa
     state.pending.samples.push({ trueAt: at, sample })

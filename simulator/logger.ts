@@ -7,6 +7,8 @@ export type Channel = 'pump' | 'vacuum' | 'air' | 'barometer' | 'supply'
 export type LoggerSpec = {
   channels: readonly Channel[]
   intervalSeconds: number
+  /** Air, barometer and supply only in samples this far apart (0 = in each). */
+  slowChannelSeconds: number
   /** Standard deviation of a single reading, per channel. */
   noise: { vacuumPa: number; airC: number; barometerPa: number; supplyV: number }
   /** Step of the reading, 0 for none. A coarse gauge has 0.1 inHg. */
@@ -70,7 +72,7 @@ export function takeReading(
   random: RandomState,
   saidMs: number,
   truth: Reading,
-  stuckVacuumPa: number | null,
+  options: { stuckVacuumPa: number | null; withSlowChannels: boolean },
 ): SimSample {
   const { noise, resolution } = logger
   const measure = (value: number, deviation: number, step: number): number =>
@@ -79,10 +81,12 @@ export function takeReading(
   const air = measure(truth.airC, noise.airC, resolution.airC)
   const barometer = measure(truth.barometerPa, noise.barometerPa, resolution.barometerPa)
   const supply = measure(truth.supplyV, noise.supplyV, resolution.supplyV)
-  const has = (channel: Channel): boolean => logger.channels.includes(channel)
+  const has = (channel: Channel): boolean =>
+    logger.channels.includes(channel) &&
+    (options.withSlowChannels || channel === 'pump' || channel === 'vacuum')
   return {
     at: saidMs,
-    vacuumPa: has('vacuum') ? (stuckVacuumPa ?? decimals(vacuum, 10)) : null,
+    vacuumPa: has('vacuum') ? (options.stuckVacuumPa ?? decimals(vacuum, 10)) : null,
     pumpOn: has('pump') ? truth.pumpOn : null,
     airC: has('air') ? decimals(air, 100) : null,
     barometerPa: has('barometer') ? decimals(barometer, 10) : null,

@@ -130,6 +130,7 @@ function baseBoat(): BoatSpec {
     logger: {
       channels: ['pump', 'vacuum', 'air', 'barometer', 'supply'],
       intervalSeconds: 15,
+      slowChannelSeconds: 0,
       noise: { vacuumPa: 8, airC: 0.03, barometerPa: 5, supplyV: 0.02 },
       resolution: { vacuumPa: LOGGER_RESOLUTION_PA, airC: 0.1, barometerPa: 10, supplyV: 0.01 },
       vacuumOffsetPa: 0,

@@ -38,7 +38,9 @@ export interface BoatState {
     interrupted: boolean
   } | null
   eventCursor: number
+  /** Number of the next sample in the logger's rhythm, and the rhythm it was counted in. */
   nextSample: number
+  intervalSeconds: number
   lastSaidAt: number
   lastVacuumReadPa: number | null
   random: { switch: RandomState; seats: RandomState; sensor: RandomState }
@@ -53,7 +55,10 @@ export interface BoatState {
   baseline: Snapshot
 }
 
-type Start = Pick<BoatState, 'amount' | 'wallC' | 'filledM3' | 'conditions' | 'nextSample' | 'random'>
+type Start = Pick<
+  BoatState,
+  'amount' | 'wallC' | 'filledM3' | 'conditions' | 'nextSample' | 'intervalSeconds' | 'random'
+>
 
 export const newState = (fromMs: number, start: Start): BoatState => ({
   ...start,
