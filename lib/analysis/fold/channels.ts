@@ -64,14 +64,22 @@ export function readsPump(state: FoldState, sample: Sample): boolean {
 }
 
 /**
- * How far an edge seen at this sample may be off, s: the spacing before it; 1 s for a record that a logger
- * sent at the edge itself, told by its coming sooner than the rhythm and out of step with the one before.
+ * How far an edge seen at this sample may be off, s: the spacing before it; at most 1 s for a record that the
+ * logger sent at the edge itself, out of step with its rhythm.
  */
 export function edgeUncertaintySeconds(state: FoldState, at: Instant): number {
   if (state.sampleAt === null) return 0
-  const spacing = at - state.sampleAt
-  const interval = (state.fitting?.intervalSeconds ?? 0) * SECOND
-  const outOfStep = Math.abs(spacing - state.spacingMs) > 0.1 * spacing
-  const seconds = spacing / SECOND
-  return spacing < 0.9 * interval && outOfStep ? Math.min(1, seconds) : seconds
+  const seconds = (at - state.sampleAt) / SECOND
+  return isInRhythm(state, at) ? seconds : Math.min(1, seconds)
+}
+
+/** Whether a sample comes in the logger's rhythm: on its grid, or as long after the last as that one was. */
+export function isInRhythm(state: FoldState, at: Instant): boolean {
+  const { rhythmAt, sampleAt, fitting } = state
+  if (rhythmAt === null || sampleAt === null || fitting === null) return true
+  const spacing = at - sampleAt
+  if (Math.abs(spacing - state.spacingMs) <= 0.02 * spacing) return true
+  const interval = fitting.intervalSeconds * SECOND
+  const beyond = (at - rhythmAt) % interval
+  return Math.min(beyond, interval - beyond) <= 0.01 * interval + 100
 }

@@ -15,11 +15,11 @@ export function noiseFloorPa(state: FoldState): number {
   return Math.max(4 * state.sigmaPa, 1.2 * state.stepPa)
 }
 
-/** Part of the settling that may still fall between two instants, Pa (judged: half an inch over a minute). */
-function settlingPa(hold: OpenHold, from: Instant, to: Instant): number {
+/** Part of the settling that may still fall between two instants, Pa: fades with a minute (judged). */
+export function settlingPa(hold: OpenHold, from: Instant, to: Instant): number {
   if (!hold.startSeen) return 0
   const share = (at: Instant): number => Math.exp(-Math.max(0, at - hold.startedAt) / MINUTE)
-  return 0.5 * INHG * (share(from) - share(to))
+  return hold.settlingPa * (share(from) - share(to))
 }
 
 /** The sharpest fall from the last half minute to this sample. */
@@ -44,6 +44,7 @@ export function findFall(
     best = { fromAt, fromPa, at, lowAt: at, lowPa: vacuumPa, slopePaPerSecond: slope }
   }
   if (hold.lastAt !== null && hold.lastPa !== null) compare(hold.lastAt, hold.lastPa)
+  else if (hold.startSeen && hold.cutOutPa !== null) compare(hold.startedAt, hold.cutOutPa)
   for (let i = 0; i + 1 < recent.length; i += 2) {
     const fromAt = recent[i] ?? 0
     if (at - fromAt <= FALL_WINDOW_MS) compare(fromAt, recent[i + 1] ?? 0)
@@ -95,9 +96,9 @@ export function settleFall(state: FoldState, hold: OpenHold, knownAt: Instant, r
   pushFlush(state, { at: fall.at, dropPa, startedPump: false, knownAt }, rows)
 }
 
-/** Writes a flush, once an instant. */
+/** Writes a flush, once an instant. The one that started a run may be known after one during it. */
 export function pushFlush(state: FoldState, flush: FlushRow, rows: Row[]): void {
-  if (state.lastFlushAt !== null && flush.at <= state.lastFlushAt) return
+  if (flush.at === state.lastFlushAt) return
   rows.push({ table: 'flush', row: { ...flush, dropPa: Math.round(flush.dropPa * 10) / 10 } })
-  state.lastFlushAt = flush.at
+  state.lastFlushAt = Math.max(flush.at, state.lastFlushAt ?? flush.at)
 }

@@ -15,14 +15,21 @@ import { cutInIsKnown, learnedCutInPa, learnedCutOutPa, learnedSettledPa, pushRi
 import type { EndedHold, FoldState, OpenHold } from './state'
 import type { Ending, Instant, Row } from './types'
 
-/** Begins a hold. `peakPa` is the cut-out just seen; a deep recharge makes the gas settle for longer. */
+/** A recharge over this many differentials is deep. */
+const DEEP_RECHARGE = 1.6
+
+/**
+ * Begins a hold. `peakPa` is the cut-out just seen; `depth` how many differentials were recharged: after a
+ * deep one the gas settles for longer and further.
+ */
 export function openHold(
   state: FoldState,
   at: Instant,
-  start: { seen: boolean; peakPa: number | null; deep: boolean; edgeUncertaintySeconds: number },
+  start: { seen: boolean; peakPa: number | null; depth: number; edgeUncertaintySeconds: number },
 ): OpenHold {
-  const settling = start.deep ? DEEP_SETTLING_SECONDS : SETTLING_SECONDS
+  const settling = start.depth > DEEP_RECHARGE ? DEEP_SETTLING_SECONDS : SETTLING_SECONDS
   const hasVacuum = readsVacuum(state)
+  const usualSettlingPa = Math.max(0.2 * INHG, 1.5 * (learnedCutOutPa(state) - learnedSettledPa(state)))
   const hold: OpenHold = {
     startedAt: at,
     startSeen: start.seen,
@@ -33,6 +40,7 @@ export function openHold(
     learnedCutInPa: hasVacuum ? learnedCutInPa(state) : null,
     setAside: state.statement !== null,
     edgeUncertaintySeconds: start.edgeUncertaintySeconds,
+    settlingPa: usualSettlingPa * Math.max(1, start.depth),
     settledAt: start.seen ? at + settling * SECOND : at,
     firstAt: null,
     firstPa: null,

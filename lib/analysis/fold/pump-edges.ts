@@ -64,7 +64,7 @@ function pumpIsOff(state: FoldState, sample: Sample, vacuumPa: number | null, ro
   if (state.settings.kind === 'on-demand') return
   if (state.hold === null && !isOff(state, vacuumPa)) {
     state.offSince = null
-    openHold(state, at, { seen: false, peakPa: null, deep: false, edgeUncertaintySeconds: 0 })
+    openHold(state, at, { seen: false, peakPa: null, depth: 0, edgeUncertaintySeconds: 0 })
   }
   if (vacuumPa === null) return
   if (state.hold === null) watchZero(state, at, vacuumPa, rows)

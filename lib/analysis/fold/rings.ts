@@ -2,6 +2,7 @@ import {
   DEFAULT_CUT_IN_PA,
   DEFAULT_CUT_OUT_PA,
   DEFAULT_SETTLING_PA,
+  INHG,
   RING_ENOUGH,
   RING_LENGTH,
 } from './constants'
@@ -29,8 +30,23 @@ function learnedOr(ring: readonly number[], setPa: number | null, defaultPa: num
   return setPa ?? ringMedian(ring) ?? defaultPa
 }
 
-export const learnedCutInPa = (state: FoldState): number =>
-  learnedOr(state.rings.cutInPa, state.settings.cutInPa, DEFAULT_CUT_IN_PA)
+export function learnedCutInPa(state: FoldState): number {
+  const { cutInPa, sparseStartPa } = state.rings
+  if (cutInPa.length >= RING_ENOUGH || state.settings.cutInPa !== null) {
+    return learnedOr(cutInPa, state.settings.cutInPa, DEFAULT_CUT_IN_PA)
+  }
+  return ringMedian(cutInPa) ?? lowestCluster(sparseStartPa) ?? DEFAULT_CUT_IN_PA
+}
+/**
+ * Samples far apart hide falls, so that starts lie at the switch's level or anywhere above it: the lowest
+ * levels that agree within 0.15 inHg are the switch's. Null until four do.
+ */
+function lowestCluster(levels: readonly number[]): number | null {
+  const sorted = [...levels].sort((a, b) => a - b)
+  const size = Math.max(4, Math.ceil(sorted.length / 5))
+  const from = sorted.findIndex((low, i) => (sorted[i + size - 1] ?? Infinity) - low <= 0.15 * INHG)
+  return from < 0 ? null : ringMedian(sorted.slice(from, from + size))
+}
 export const learnedCutOutPa = (state: FoldState): number =>
   learnedOr(state.rings.cutOutPa, state.settings.cutOutPa, DEFAULT_CUT_OUT_PA)
 export const learnedSettledPa = (state: FoldState): number =>
@@ -38,7 +54,9 @@ export const learnedSettledPa = (state: FoldState): number =>
 
 /** Whether any figure for the cut-in exists, learned or set. */
 export const cutInIsKnown = (state: FoldState): boolean =>
-  state.rings.cutInPa.length > 0 || state.settings.cutInPa !== null
+  state.rings.cutInPa.length > 0 ||
+  state.settings.cutInPa !== null ||
+  lowestCluster(state.rings.sparseStartPa) !== null
 
 export interface Learned {
   cutOutPa: number

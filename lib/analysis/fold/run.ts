@@ -1,10 +1,10 @@
-import { CLOSE_SAMPLES_MS, FALL_WINDOW_MS, FLUSH_PA, INHG, RING_ENOUGH, SECOND } from './constants'
-import { fallPa, noiseFloorPa, pushFlush } from './fall'
+import { CLOSE_SAMPLES_MS, FLUSH_PA, INHG, MINUTE, RING_ENOUGH, SECOND, START_FALL_PA } from './constants'
+import { fallPa, noiseFloorPa, pushFlush, settlingPa } from './fall'
 import { endHold, offLinePa, openHold, pushHold } from './hold'
 import { leakSlope } from './leg'
 import { learnedCutInPa, learnedCutOutPa, pushRing, ringMedian } from './rings'
 import type { EndedHold, FoldState, OpenRun } from './state'
-import { decideTrigger } from './trigger'
+import { decideTrigger, isOverLong } from './trigger'
 import type { Ending, Instant, Row, Trigger } from './types'
 
 export interface Start {
@@ -19,15 +19,10 @@ export interface Start {
 
 /** The pump was seen to start (or found running): ends the hold, begins a run. */
 export function startRun(state: FoldState, start: Start, rows: Row[]): void {
-  const { hold, fall } = state
-  const beforePa = fall?.fromPa ?? hold?.lastPa ?? null
-  let sudden: number | null = null
-  if (start.seen && start.startPa !== null && beforePa !== null) {
-    const beforeAt = fall?.fromAt ?? hold?.lastAt ?? start.at
-    const slope = fall?.slopePaPerSecond ?? leakSlope(state)
-    sudden = beforePa - start.startPa - 1.2 * slope * ((start.at - beforeAt) / SECOND)
-    if (fall !== null) sudden = Math.max(sudden, fallPa(fall))
-  }
+  const { hold } = state
+  const before = vacuumBefore(state)
+  const beforePa = before?.pa ?? null
+  const sudden = start.seen ? suddenFallPa(state, start, before) : null
   const line = offLinePa(state)
   const isLow = start.startPa !== null && start.startPa < line
   const fellSuddenly = sudden !== null && sudden > Math.max(FLUSH_PA, noiseFloorPa(state))
@@ -49,6 +44,9 @@ export function startRun(state: FoldState, start: Start, rows: Row[]): void {
     startSpacingMs: start.spacingMs,
     edgeUncertaintySeconds: start.edgeUncertaintySeconds,
     lowPa: start.startPa,
+    fall: null,
+    fellMidRun: false,
+    onCurve: false,
     topPa: start.startPa,
     topAt: start.startPa === null ? null : start.at,
     underAt: null,
@@ -57,6 +55,29 @@ export function startRun(state: FoldState, start: Start, rows: Row[]): void {
     risingAt: start.at,
     supplyV: null,
   }
+}
+
+/** Vacuum before the start: where a fall in progress came from, the last of the hold, or the stop before it. */
+function vacuumBefore(state: FoldState): { at: Instant; pa: number } | null {
+  const { hold, fall } = state
+  if (fall !== null) return { at: fall.fromAt, pa: fall.fromPa }
+  if (hold === null) return null
+  if (hold.lastAt !== null && hold.lastPa !== null) return { at: hold.lastAt, pa: hold.lastPa }
+  return hold.startSeen && hold.cutOutPa !== null ? { at: hold.startedAt, pa: hold.cutOutPa } : null
+}
+
+/** Fall to the start beyond what leak and settling explain, Pa; null where either end is unknown. */
+function suddenFallPa(
+  state: FoldState,
+  start: Start,
+  before: { at: Instant; pa: number } | null,
+): number | null {
+  if (before === null || start.startPa === null) return null
+  const { hold, fall } = state
+  const slope = fall?.slopePaPerSecond ?? leakSlope(state)
+  const settled = hold === null ? 0 : settlingPa(hold, before.at, start.at)
+  const suddenPa = before.pa - start.startPa - 1.2 * slope * ((start.at - before.at) / SECOND) - settled
+  return fall === null ? suddenPa : Math.max(suddenPa, fallPa(fall))
 }
 
 /** Takes in a sample while the pump is on. */
@@ -71,25 +92,66 @@ export function runSample(
   run.setAside ||= state.statement !== null
   if (supplyV !== null) run.supplyV = supplyV
   if (vacuumPa === null) return
-  const early = at - run.startedAt <= FALL_WINDOW_MS
-  if (run.lowPa === null || (early && vacuumPa < run.lowPa)) run.lowPa = vacuumPa
   followCrossing(state, run, at, vacuumPa)
-  if (run.topPa === null || vacuumPa > run.topPa) {
-    if (run.topPa === null || vacuumPa > run.topPa + state.sigmaPa) run.risingAt = at
-    run.topPa = vacuumPa
-    run.topAt = at
-  } else if (!early && run.topPa - vacuumPa > Math.max(FLUSH_PA, noiseFloorPa(state))) {
-    pushFlush(state, { at, dropPa: run.topPa - vacuumPa, startedPump: false, knownAt: at }, rows)
-    run.topPa = vacuumPa
-    run.topAt = at
-  } else if (early && run.topPa - vacuumPa > START_TOP_RESET_PA) {
-    run.topPa = vacuumPa
-    run.topAt = at
-  }
+  if (run.topPa === null) {
+    run.lowPa = vacuumPa
+    raiseTop(run, at, vacuumPa)
+  } else if (run.fall !== null) followFall(state, run, run.fall, at, vacuumPa, rows)
+  else if (vacuumPa > run.topPa) {
+    if (vacuumPa > run.topPa + state.sigmaPa) run.risingAt = at
+    raiseTop(run, at, vacuumPa)
+    run.onCurve ||= isOnCurve(state, run, at, vacuumPa)
+  } else if (run.topPa - vacuumPa > Math.max(START_FALL_PA, noiseFloorPa(state))) {
+    const rose = run.lowPa !== null && run.topPa - run.lowPa > Math.max(0.04 * INHG, 3 * state.sigmaPa)
+    if (rose) {
+      run.fellMidRun = true
+      run.fall = { at, fromPa: run.topPa, lowPa: vacuumPa }
+    } else {
+      run.lowPa = vacuumPa
+      raiseTop(run, at, vacuumPa)
+    }
+  } else if (run.lowPa !== null && vacuumPa < run.lowPa) run.lowPa = vacuumPa
 }
 
-/** A flush that goes on after the start takes the top with it. */
-const START_TOP_RESET_PA = 0.15 * INHG
+function raiseTop(run: OpenRun, at: Instant, vacuumPa: number): void {
+  run.topPa = vacuumPa
+  run.topAt = at
+}
+
+/** A flush during the run: it is over when the vacuum rises again. */
+function followFall(
+  state: FoldState,
+  run: OpenRun,
+  fall: { at: Instant; fromPa: number; lowPa: number },
+  at: Instant,
+  vacuumPa: number,
+  rows: Row[],
+): void {
+  if (vacuumPa < fall.lowPa) {
+    fall.lowPa = vacuumPa
+    return
+  }
+  endRunFall(state, run, at, rows)
+  raiseTop(run, at, vacuumPa)
+}
+
+/** Writes the flush that fell during the run, if one did. */
+function endRunFall(state: FoldState, run: OpenRun, knownAt: Instant, rows: Row[]): void {
+  const { fall } = run
+  run.fall = null
+  if (fall === null) return
+  const dropPa = fall.fromPa - fall.lowPa
+  if (dropPa >= FLUSH_PA) pushFlush(state, { at: fall.at, dropPa, startedPump: false, knownAt }, rows)
+}
+
+/** Risen from its start as fast as this pump does it. */
+function isOnCurve(state: FoldState, run: OpenRun, at: Instant, vacuumPa: number): boolean {
+  const usual = ringMedian(state.rings.rechargePaPerSecond)
+  const seconds = (at - run.startedAt) / SECOND
+  if (usual === null || run.startPa === null || seconds < 3) return false
+  const expectedPa = 0.92 * usual * seconds
+  return expectedPa > 0.15 * INHG && run.startPa + expectedPa - vacuumPa <= 0.12 * INHG
+}
 
 function followCrossing(state: FoldState, run: OpenRun, at: Instant, vacuumPa: number): void {
   const cutIn = learnedCutInPa(state)
@@ -118,10 +180,12 @@ export function stopRun(state: FoldState, stop: Stop, rows: Row[]): void {
   if (run === null) return
   const seconds = (stop.at - run.startedAt) / SECOND
   const uncertainty = Math.max(run.edgeUncertaintySeconds, stop.edgeUncertaintySeconds)
-  const { trigger, byLength } = decideTrigger(state, run, { seconds, uncertaintySeconds: uncertainty })
+  const end = { seconds, uncertaintySeconds: uncertainty }
+  const { trigger, byLength } = decideTrigger(state, run, end)
+  endRunFall(state, run, stop.knownAt, rows)
   const peakPa = peakOf(run, stop.stopPa)
   const recharge = trigger === 'unknown' && !run.startSeen ? null : rechargeOf(state, run, stop, peakPa)
-  if (ended !== null) pushEnded(state, ended, run, trigger, uncertainty, stop.knownAt, rows)
+  if (ended !== null) pushEnded(state, ended, run, trigger, stop.knownAt, rows)
   rows.push({
     table: 'run',
     row: {
@@ -138,17 +202,24 @@ export function stopRun(state: FoldState, stop: Stop, rows: Row[]): void {
     },
   })
   pushStartFlush(state, run, trigger, seconds, peakPa, stop.knownAt, rows)
-  if (!run.setAside) learnFromRun(state, run, stop, { trigger, byLength, seconds, peakPa, recharge })
+  if (!run.setAside)
+    learnFromRun(state, run, stop, {
+      trigger,
+      byLength,
+      overLong: isOverLong(state, end),
+      seconds,
+      peakPa,
+      recharge,
+    })
   state.run = null
   state.ended = null
   const depth = peakPa === null || run.lowPa === null ? 0 : peakPa - run.lowPa
-  const usualDepth = learnedCutOutPa(state) - learnedCutInPa(state)
-  const deep = run.fromOff || depth > 1.6 * usualDepth
+  const usualDepth = Math.max(0.5 * INHG, learnedCutOutPa(state) - learnedCutInPa(state))
   if (state.settings.kind !== 'on-demand') {
     openHold(state, stop.at, {
       seen: true,
       peakPa,
-      deep,
+      depth: depth / usualDepth,
       edgeUncertaintySeconds: stop.edgeUncertaintySeconds,
     })
   }
@@ -159,7 +230,8 @@ export function interruptRun(state: FoldState, lastAt: Instant, knownAt: Instant
   const { run, ended } = state
   if (run === null) return
   const { trigger } = decideTrigger(state, run, { seconds: null, uncertaintySeconds: 0 })
-  if (ended !== null) pushEnded(state, ended, run, trigger, run.edgeUncertaintySeconds, knownAt, rows)
+  endRunFall(state, run, knownAt, rows)
+  if (ended !== null) pushEnded(state, ended, run, trigger, knownAt, rows)
   rows.push({
     table: 'run',
     row: {
@@ -185,7 +257,6 @@ function pushEnded(
   ended: EndedHold,
   run: OpenRun,
   trigger: Trigger,
-  uncertainty: number,
   knownAt: Instant,
   rows: Row[],
 ): void {
@@ -193,7 +264,6 @@ function pushEnded(
     ...ended,
     edgeUncertaintySeconds: Math.max(ended.edgeUncertaintySeconds, run.edgeUncertaintySeconds),
   }
-  void uncertainty
   pushHold(state, whole, endingOf(ended, run, trigger), knownAt, rows)
 }
 
@@ -222,7 +292,7 @@ function rechargeOf(state: FoldState, run: OpenRun, stop: Stop, peakPa: number |
     run.edgeUncertaintySeconds <= 15 &&
     Math.abs(run.startPa - cutIn) < 0.4 * INHG
   ) {
-    if (run.lowPa !== null && run.startPa - run.lowPa > START_TOP_RESET_PA) return null
+    if (run.lowPa !== null && run.startPa - run.lowPa > START_FALL_PA) return null
     from = run.startedAt
     fromPa = run.startPa
   }
@@ -258,6 +328,7 @@ function learnFromRun(
   seen: {
     trigger: Trigger
     byLength: boolean
+    overLong: boolean
     seconds: number
     peakPa: number | null
     recharge: number | null
@@ -272,10 +343,20 @@ function learnFromRun(
     pushRing(rings.cutInPa, run.startPa)
   }
   if (run.fromOff && run.startSeen && run.startPa !== null) learnLowStart(state, run.startPa)
-  if (run.startPa === null || (seen.trigger === 'leak' && !seen.byLength)) {
+  if (run.startSeen && seen.trigger === 'leak' && !startIsClose) learnSparseStart(state, run)
+  if (run.startPa === null) {
     if (run.startSeen) pushRing(rings.runSeconds, seen.seconds)
+  } else if (seen.trigger === 'leak' && !seen.overLong) {
+    pushRing(rings.runSeconds, seen.seconds)
     rings.longRunSeconds = []
   } else if (seen.byLength) learnLongRun(state, seen.seconds)
+}
+
+/** Through samples up to two minutes apart: the level half way to the next, where the leak is slow enough. */
+function learnSparseStart(state: FoldState, run: OpenRun): void {
+  if (run.beforePa === null || run.startSpacingMs > 2 * MINUTE) return
+  const lostPa = state.slopePaPerSecond * (run.startSpacingMs / SECOND)
+  if (lostPa < 0.15 * INHG) pushRing(state.rings.sparseStartPa, run.beforePa - lostPa / 2)
 }
 
 /** A breaker restarts anywhere, a switch at one level: five starts in a row alike are the switch moved. */

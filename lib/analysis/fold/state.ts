@@ -27,6 +27,8 @@ export interface OpenHold {
   learnedCutInPa: number | null
   setAside: boolean
   edgeUncertaintySeconds: number
+  /** What the gas may take back while it warms after the stop (generous). */
+  settlingPa: number
   /** No leg before this instant: the gas is settling after a stop or a flush. */
   settledAt: Instant
   /** First and last accepted vacuum, and the first past the settling (before any flush). */
@@ -58,8 +60,13 @@ export interface OpenRun {
   /** Time between the samples beside the start. */
   startSpacingMs: number
   edgeUncertaintySeconds: number
-  /** Lowest vacuum of the first half minute. */
+  /** Lowest vacuum before it began to rise: what a flush that started the run left. */
   lowPa: number | null
+  /** A fall after the vacuum had begun to rise: a flush during the run, not its cause. */
+  fall: { at: Instant; fromPa: number; lowPa: number } | null
+  fellMidRun: boolean
+  /** Seen to rise from its start as a recharge of this pump does: then nothing was flushed at the start. */
+  onCurve: boolean
   topPa: number | null
   topAt: Instant | null
   /** Last sample under the learned cut-in, and when the vacuum crossed it. */
@@ -132,6 +139,8 @@ export interface Rings {
   /** Levels of recent starts from far below, and lengths of recent over-long runs: five alike replace the ring. */
   lowStartPa: number[]
   longRunSeconds: number[]
+  /** Starts without a visible fall seen through samples too far apart to be the switch's own level. */
+  sparseStartPa: number[]
 }
 
 export interface FaultState {
@@ -155,6 +164,8 @@ export interface FoldState {
   at: Instant | null
   sampleAt: Instant | null
   spacingMs: number
+  /** Last sample that came in the logger's rhythm rather than at an edge. */
+  rhythmAt: Instant | null
   settings: FoldSettings
   fitting: { loggerId: string; at: Instant; intervalSeconds: number; pump: boolean; vacuum: boolean } | null
   statement: { value: StatementValue; since: Instant } | null
@@ -187,6 +198,7 @@ export function initialState(): FoldState {
     at: null,
     sampleAt: null,
     spacingMs: 0,
+    rhythmAt: null,
     settings: { kind: 'pass-through', cutOutPa: null, cutInPa: null },
     fitting: null,
     statement: null,
@@ -225,6 +237,7 @@ export function initialState(): FoldState {
       runSeconds: [],
       lowStartPa: [],
       longRunSeconds: [],
+      sparseStartPa: [],
     },
     fault: {
       kind: null,

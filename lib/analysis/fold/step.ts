@@ -1,4 +1,4 @@
-import { gapLimitMs, readsPump, takeWeather } from './channels'
+import { gapLimitMs, isInRhythm, readsPump, takeWeather } from './channels'
 import { markCheckpoint } from './checkpoint'
 import { applyFact } from './facts'
 import { checkVacuum } from './faults'
@@ -49,6 +49,7 @@ function takeSample(state: FoldState, sample: Sample, rows: Row[]): void {
     state.channels.pumpOn = sample.pumpOn
     state.channels.pumpAt = at
   }
+  if (isInRhythm(state, at)) state.rhythmAt = at
   state.spacingMs = previousAt === null ? 0 : at - previousAt
   state.sampleAt = at
   const holdBegan = state.hold !== null && state.hold !== holdBefore && state.hold.startSeen

@@ -1,6 +1,6 @@
 import { INHG, RING_ENOUGH, START_FALL_PA } from './constants'
 import { noiseFloorPa } from './fall'
-import { learnedCutInPa, ringMedian } from './rings'
+import { cutInIsKnown, learnedCutInPa, ringMedian } from './rings'
 import type { FoldState, OpenRun } from './state'
 import type { Trigger } from './types'
 
@@ -28,6 +28,7 @@ export function decideTrigger(
   // A pump that is on raises the vacuum: what still falls is a flush that began before the start.
   if (run.startPa !== null && run.lowPa !== null && run.startPa - run.lowPa > floor) return plain('flush')
   if (startsTooHigh(state, run)) return plain('flush')
+  if (run.fellMidRun || run.onCurve) return plain('leak')
   if (isOverLong(state, end)) return { trigger: 'flush', byLength: true }
   return plain('leak')
 }
@@ -38,13 +39,13 @@ export function decideTrigger(
  */
 function startsTooHigh(state: FoldState, run: OpenRun): boolean {
   if (run.beforePa === null || run.startSpacingMs < 20_000 || run.edgeUncertaintySeconds <= 2) return false
-  if (state.rings.cutInPa.length < RING_ENOUGH && state.settings.cutInPa === null) return false
+  if (!cutInIsKnown(state)) return false
   const leaked = 1.5 * state.slopePaPerSecond * (run.startSpacingMs / 1000)
   return run.beforePa - leaked > learnedCutInPa(state) + 0.35 * INHG
 }
 
 /** Longer than the tight cluster of leak recharges. */
-function isOverLong(state: FoldState, end: RunEnd): boolean {
+export function isOverLong(state: FoldState, end: RunEnd): boolean {
   const ring = state.rings.runSeconds
   const usual = ringMedian(ring)
   if (end.seconds === null || usual === null || ring.length < RING_ENOUGH) return false

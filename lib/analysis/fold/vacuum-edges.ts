@@ -29,7 +29,7 @@ export function vacuumStep(state: FoldState, sample: Sample, vacuumPa: number, r
   }
   if (state.settings.kind !== 'on-demand' && state.hold === null && !isOff(state, vacuumPa)) {
     state.offSince = null
-    openHold(state, at, { seen: false, peakPa: null, deep: false, edgeUncertaintySeconds: 0 })
+    openHold(state, at, { seen: false, peakPa: null, depth: 0, edgeUncertaintySeconds: 0 })
   }
   if (risesToRun(state, at, vacuumPa, spacingMs)) {
     beginRun(state, sample, vacuumPa, spacingMs, rows)
