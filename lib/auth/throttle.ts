@@ -10,6 +10,7 @@ function limiter(keyPrefix: string, points: number, durationSeconds: number): Ra
       query: (statement: { text: string; values?: unknown[] }) =>
         asIngest((trx) => runThrottleStatement(trx, statement)),
     },
+    storeType: 'pool',
     tableName: 'throttle',
     tableCreated: true,
     clearExpiredByTimeout: false,
