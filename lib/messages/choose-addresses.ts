@@ -106,3 +106,12 @@ function usualKinds(as: 'owner' | 'shop', channel: Channel, subject: Subject): N
   if (subject.noShop) return [...OWNER_KINDS, ...SHOP_KINDS]
   return subject.ownerToo ? [...OWNER_KINDS, 'logger-silent'] : OWNER_KINDS
 }
+
+/** The lowest chance from which any of these people wants to be warned of a night. */
+export function lowestNightChance(people: Recipient[]): number {
+  const chances = people
+    .filter((person) => person.as === 'owner')
+    .flatMap((person) => [...contactsOf(person, 'email'), ...contactsOf(person, 'sms')])
+    .map((contact) => contact.settings.nightWarningChance ?? DEFAULT_NIGHT_CHANCE)
+  return chances.length === 0 ? DEFAULT_NIGHT_CHANCE : Math.min(...chances)
+}

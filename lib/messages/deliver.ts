@@ -10,7 +10,7 @@ import {
 } from '@/db/queries/message-queue'
 import { isStopped, stopAddress } from '@/db/queries/recipients'
 import { SendError, type Services } from '@/lib/messages/services'
-import { appUrl } from '@/lib/messages/tell'
+import { env } from '@/lib/env'
 
 /** Why a message was sent, or not. */
 export type DeliveryReason =
@@ -106,13 +106,13 @@ function handOver(message: OutgoingMessage, services: Services): Promise<string>
       subject: message.subject ?? '',
       text: message.bodyText,
       html: message.bodyHtml,
-      messageId: `message-${message.id}@${new URL(appUrl()).hostname}`,
+      messageId: `message-${message.id}@${new URL(env().appUrl).hostname}`,
       attachments: message.attachments,
     })
   }
   return services.sendText({
     to: message.address,
     body: message.bodyText,
-    statusCallback: `${appUrl()}/api/sms/status?message=${message.id}`,
+    statusCallback: `${env().appUrl}/api/sms/status?message=${message.id}`,
   })
 }

@@ -8,9 +8,9 @@ export const nightEvidenceSchema = z.object({
     from: z.string(),
     to: z.string(),
     bedtime: z.string(),
+    /** First run where the phase is known, and first run after a last flush at bedtime. */
     firstAt: z.string().nullable(),
-    firstEarliest: z.string().nullable(),
-    firstLatest: z.string().nullable(),
+    firstAfterBedtime: z.string().nullable(),
   }),
   chance: z.number().nullable(),
   chanceIfFlushedLast: z.number(),

@@ -1,5 +1,6 @@
 import nodemailer from 'nodemailer'
 import twilio from 'twilio'
+import type { Environment } from '@/lib/env'
 import { SERVICE_TIMEOUT_MS } from '@/lib/messages/queue-settings'
 import type { Attachment } from '@/db/queries/message-queue'
 
@@ -39,42 +40,37 @@ export class SendError extends Error {
   }
 }
 
-export interface ServiceSettings {
-  SMTP_URL?: string | undefined
-  MAIL_FROM?: string | undefined
-  TWILIO_API_URL?: string | undefined
-  TWILIO_ACCOUNT_SID?: string | undefined
-  TWILIO_AUTH_TOKEN?: string | undefined
-  TWILIO_FROM?: string | undefined
-}
+export type ServiceSettings = Pick<Environment, 'smtp' | 'sms'>
 
 /**
  * Opens the services that the environment names. One that is not set up throws when it is used, so that the
  * other still serves.
  */
-export function openServices(env: ServiceSettings): Services {
-  const mail = openMail(env)
-  const text = openText(env)
+export function openServices(settings: ServiceSettings): Services {
+  const mail = openMail(settings.smtp)
+  const text = openText(settings.sms)
   return { sendMail: mail.send, sendText: text, close: mail.close }
 }
 
-function openMail(env: ServiceSettings): { send: Services['sendMail']; close: () => void } {
-  if (!env.SMTP_URL) return { send: () => Promise.reject(notSetUp('SMTP_URL')), close: () => {} }
-  const plain = env.SMTP_URL.startsWith('smtp://') && /\/\/(127\.|localhost|\[::1\])/.test(env.SMTP_URL)
+function openMail(smtp: ServiceSettings['smtp']): { send: Services['sendMail']; close: () => void } {
+  const address = smtp.url ?? (smtp.host === undefined ? undefined : addressOf(smtp.host, smtp))
+  if (address === undefined) {
+    return { send: () => Promise.reject(notSetUp('SMTP_URL or SMTP_HOST')), close: () => {} }
+  }
+  const here = /^smtp:\/\/([^@/]*@)?(127\.|localhost|\[::1\])/.test(address)
   const transport = nodemailer.createTransport({
-    url: env.SMTP_URL,
-    // A server on this machine is reached without encryption; any other is asked for it.
-    ignoreTLS: plain,
-    requireTLS: !plain && env.SMTP_URL.startsWith('smtp://'),
+    url: address,
+    // A server on this machine is reached without encryption; any other must offer it.
+    ignoreTLS: here,
+    requireTLS: !here && address.startsWith('smtp://'),
     connectionTimeout: SERVICE_TIMEOUT_MS / 2,
     greetingTimeout: SERVICE_TIMEOUT_MS / 2,
     socketTimeout: SERVICE_TIMEOUT_MS,
   })
-  const from = env.MAIL_FROM ?? 'Middlewatch <watch@middlewatch.example>'
   return {
     send: async (mail) => {
       const sending = transport.sendMail({
-        from,
+        from: smtp.from,
         to: mail.to,
         subject: mail.subject,
         text: mail.text,
@@ -102,13 +98,19 @@ function mailError(error: unknown): SendError {
   return new SendError(textOf(error), code !== null && code >= 500)
 }
 
-function openText(env: ServiceSettings): Services['sendText'] {
-  const { TWILIO_ACCOUNT_SID: accountSid, TWILIO_AUTH_TOKEN: authToken, TWILIO_FROM: from } = env
-  if (!accountSid || !authToken || !from) {
+function addressOf(host: string, smtp: ServiceSettings['smtp']): string {
+  const who =
+    smtp.user === undefined ? '' : `${encodeURIComponent(smtp.user)}:${encodeURIComponent(smtp.pass ?? '')}@`
+  return `${smtp.port === 465 ? 'smtps' : 'smtp'}://${who}${host}:${smtp.port}`
+}
+
+function openText(sms: ServiceSettings['sms']): Services['sendText'] {
+  const { accountSid, authToken, from } = sms
+  if (accountSid === undefined || authToken === undefined || from === undefined) {
     return () => Promise.reject(notSetUp('TWILIO_ACCOUNT_SID, TWILIO_AUTH_TOKEN or TWILIO_FROM'))
   }
   const client = twilio(accountSid, authToken, { timeout: SERVICE_TIMEOUT_MS })
-  if (env.TWILIO_API_URL) client.api.baseUrl = env.TWILIO_API_URL.replace(/\/$/, '')
+  if (sms.apiUrl !== undefined) client.api.baseUrl = sms.apiUrl.replace(/\/$/, '')
   return async (text) => {
     const sending = client.messages.create({
       to: text.to,

@@ -18,6 +18,7 @@ import { messagePerson } from '@/db/queries/recipients'
 import { quietUntil, recipientsOf, type Recipient } from '@/db/queries/recipients'
 import { toldEvents, type ToldEvent } from '@/db/queries/notice-events'
 import { chooseAddresses, type ChosenAddress, type Subject } from '@/lib/messages/choose-addresses'
+import { env } from '@/lib/env'
 import { compose } from '@/lib/messages/compose'
 import { enqueue } from '@/lib/messages/queue'
 
@@ -135,7 +136,7 @@ async function send(trx: Trx, one: Addressed, now: Date): Promise<string> {
     return waiting.id
   }
   const linkCode = newLinkCode()
-  const body = await compose(chosen.channel, events, person, { appUrl: appUrl(), linkCode })
+  const body = await compose(chosen.channel, events, person, { appUrl: env().appUrl, linkCode })
   const sendAfter = await sendAfterFor(trx, one, now)
   const messageId = await insertMessage(trx, {
     ...to,
@@ -157,7 +158,7 @@ async function rewrite(trx: Trx, messageId: string): Promise<void> {
   const reader = await messagePerson(trx, messageId)
   if (reader === null) return
   const body = await compose(reader.channel, events, reader, {
-    appUrl: appUrl(),
+    appUrl: env().appUrl,
     linkCode: reader.linkCode,
   })
   await rewriteMessage(trx, messageId, { ...body, usefulUntil: usefulUntil(events) })
@@ -187,5 +188,3 @@ function usefulUntil(events: ToldEvent[]): Date | null {
 /** About 49 bits: a link in a message acts without a password, so it must not be guessed. */
 export const newLinkCode = (): string =>
   Array.from({ length: LINK_LENGTH }, () => LINK_ALPHABET.charAt(randomInt(LINK_ALPHABET.length))).join('')
-
-export const appUrl = (): string => (process.env.APP_URL ?? 'http://127.0.0.1:3000').replace(/\/$/, '')

@@ -44,11 +44,11 @@ const textHours = (night: NightEvidence): string =>
   `${night.local.from}-${night.local.to}`.replace(/:00/g, '')
 
 function firstOf(night: NightEvidence, clock: (hhmm: string) => string): string {
-  const { firstAt, firstLatest, bedtime } = night.local
+  const { firstAt, firstAfterBedtime, bedtime } = night.local
   if (firstAt !== null) return `, first at about ${clock(firstAt)}`
-  return firstLatest === null
+  return firstAfterBedtime === null
     ? ''
-    : `, first by ${clock(firstLatest)} if the last flush is at ${clock(bedtime)}`
+    : `, first by about ${clock(firstAfterBedtime)} if the last flush is at ${clock(bedtime)}`
 }
 
 function surenessOf(night: NightEvidence, clock: (hhmm: string) => string): string {
