@@ -85,7 +85,7 @@ export const TEST_POINTS: Readonly<Record<TestPointKind, TestPointFacts>> = {
 /** A test point on one boat: which kind, on which part, and the parts that are then in the test. */
 export type TestPoint = { kind: TestPointKind; at: string | null; parts: string[] }
 
-export type SystemKind = 'pass-through' | 'collecting' | 'unit' | 'two' | 'on-demand'
+export type SystemKind = 'pass-through' | 'collecting' | 'unit' | 'two-pumps' | 'on-demand'
 
 /**
  * The tests that a system drawn as parts allows; the set in each follows from the drawing. Each part's

@@ -1,0 +1,93 @@
+import { bestSplit, levelOf, lineChiSquared, splitAt } from './best-split'
+import { type LegRate, weighLegs, type WeighedLeg } from './leg-noise'
+import { localise } from './localise'
+
+export type Step = {
+  /** The change lies between these instants, epoch milliseconds. */
+  between: [number, number]
+  fromPaPerHour: number
+  toPaPerHour: number
+  /** The change over its standard error; over 5. */
+  strength: number
+}
+
+const STRONG = 5
+const LEAST_RATIO = 1.3
+/** A step must explain the legs this much better than a slow change does. */
+const BETTER_THAN_LINE = 4
+
+/**
+ * Sudden changes of the leak rate: a weighted likelihood-ratio split of the legs' rates (z over 5 and by a
+ * factor of at least 1.3, better than a straight line), again on each side, each localised to the hold in
+ * which it happened. Fewer than four legs, or none that stand out: an empty list. Legs with NaN or without
+ * an error are left out; order does not matter.
+ * @example findSteps(legs) // [{ between: [t1, t2], fromPaPerHour: 372, toPaPerHour: 1524, strength: 21 }]
+ */
+export function findSteps(legs: readonly LegRate[]): Step[] {
+  const known = legs
+    .filter((leg) => Number.isFinite(leg.paPerHour) && leg.sigmaPaPerHour > 0 && leg.endedAt > leg.startedAt)
+    .sort((a, b) => a.startedAt - b.startedAt)
+  const weighed = weighLegs(known)
+  return describe(weighed, keepStrong(weighed, cutsIn(weighed, 0)))
+}
+
+/** Indices at which a new level begins, by recursion on each side of the best split. */
+function cutsIn(legs: readonly WeighedLeg[], offset: number): number[] {
+  const split = bestSplit(legs)
+  if (split === null || !isStep(legs, split)) return []
+  return [
+    ...cutsIn(legs.slice(0, split.at), offset),
+    offset + split.at,
+    ...cutsIn(legs.slice(split.at), offset + split.at),
+  ]
+}
+
+type Levels = Pick<NonNullable<ReturnType<typeof bestSplit>>, 'before' | 'after' | 'z' | 'at'>
+
+function isStep(legs: readonly WeighedLeg[], split: Levels): boolean {
+  if (!isStrong(legs, split)) return false
+  const left = split.before.chiSquared + split.after.chiSquared
+  return lineChiSquared(legs) > left + BETTER_THAN_LINE
+}
+
+function isStrong(legs: readonly WeighedLeg[], { before, after, z, at }: Levels): boolean {
+  const noise = 1 / Math.sqrt(Math.min(before.weight, after.weight))
+  const small = Math.max(noise, Math.min(Math.abs(before.value), Math.abs(after.value)))
+  const large = Math.max(Math.abs(before.value), Math.abs(after.value))
+  if (Math.abs(z) <= STRONG || large < LEAST_RATIO * small) return false
+  // A side of few legs must have all of them beyond the middle, or one odd leg would be a step.
+  const middle = (before.value + after.value) / 2
+  const beyond = (leg: WeighedLeg, level: number) => (leg.value - middle) * (level - middle) > 0
+  const agrees = (side: readonly WeighedLeg[], level: number) =>
+    side.length > 4 || side.every((leg) => beyond(leg, level))
+  return agrees(legs.slice(0, at), before.value) && agrees(legs.slice(at), after.value)
+}
+
+/** Drops cuts that are not strong between their final neighbours, the weakest first. */
+function keepStrong(legs: readonly WeighedLeg[], cuts: readonly number[]): number[] {
+  let kept = cuts.slice()
+  for (;;) {
+    const judged = kept.map((cut, index) => {
+      const part = legs.slice(kept[index - 1] ?? 0, kept[index + 1] ?? legs.length)
+      const split = splitAt(part, cut - (kept[index - 1] ?? 0))
+      return { cut, strong: isStrong(part, split), z: Math.abs(split.z) }
+    })
+    const weakest = judged.filter((item) => !item.strong).sort((a, b) => a.z - b.z)[0]
+    if (weakest === undefined) return kept
+    kept = kept.filter((cut) => cut !== weakest.cut)
+  }
+}
+
+function describe(legs: readonly WeighedLeg[], cuts: readonly number[]): Step[] {
+  return cuts.map((cut, index) => {
+    const from = cuts[index - 1] ?? 0
+    const part = legs.slice(from, cuts[index + 1] ?? legs.length)
+    const split = splitAt(part, cut - from)
+    return {
+      between: localise(part, split),
+      fromPaPerHour: levelOf(part.slice(0, split.at)).value,
+      toPaPerHour: levelOf(part.slice(split.at)).value,
+      strength: Math.abs(split.z),
+    }
+  })
+}

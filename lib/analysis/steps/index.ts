@@ -1,0 +1,2 @@
+export * from './find-steps'
+export type { LegRate } from './leg-noise'
