@@ -1,5 +1,6 @@
 import { standardPressurePa } from '../gas'
 import { estimateHoldTime, type HoldTimeEstimate } from '../hold-time'
+import { bandOf } from './band'
 import { causeOf, signsOf } from './cause'
 import { pumpDayOf } from './pump-day'
 import { rankOf } from './rank'
@@ -14,8 +15,7 @@ import type { Figures, FiguresInput, HoldTimeFigure, LeakRateFigure } from './ty
  */
 export function figuresOf(input: FiguresInput): Figures {
   const { at, rows, open, learned, settings } = input
-  const cutOutPa = learned.cutOutPa ?? settings.cutOutPa
-  const cutInPa = learned.cutInPa ?? settings.cutInPa
+  const { cutOutPa, cutInPa, doubt } = bandOf(input)
   const hold = estimateHoldTime({
     at,
     runs: rows.runs,
@@ -25,6 +25,7 @@ export function figuresOf(input: FiguresInput): Figures {
     cutOutPa,
     settledPa: learned.settledPa,
     cutInPa,
+    bandDoubt: doubt,
     standardPressurePa: standardPressurePa(settings.altitudeM),
     standingVacuum: settings.kind !== 'on-demand',
   })

@@ -33,12 +33,16 @@ export interface CurrentReading {
   supplyV: number | null
 }
 
-/** Medians of the rings in the state of the fold, the set-up's figures until there are five; null = neither. */
+/** What the rings in the state of the fold teach; null = nothing yet. Made by `figuresInput`. */
 export interface LearnedFigures {
   cutOutPa: number | null
   settledPa: number | null
   cutInPa: number | null
   rechargePaPerSecond: number | null
+  /** How many readings of the switch stand behind each point. */
+  readings: { cutOut: number; cutIn: number }
+  /** Step of the gauge as its readings show it, Pa; 0 = not seen. */
+  stepPa: number
 }
 
 export interface FiguresSettings {

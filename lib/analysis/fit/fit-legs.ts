@@ -32,6 +32,8 @@ export interface LegFit {
 /** Pa per K: gas law and half-wet vapour together give 140 to 375 as walls and wetness have it (judged). */
 const GAS_RESPONSE_EACH = { mean: 75, sigma: 120 }
 const GAS_RESPONSE_SUM = { mean: 225, sigma: 75 }
+/** What the gas gives back after a stop: 0.1 to 0.3 inHg (judged). */
+const WARMING = { mean: 600, sigma: 400 }
 /** Share of orifice: evenly anything between none and all, so 0.29 either way. */
 const SHAPE_SIGMA = 0.58
 /** What a leg's rate may be off by beyond its noise, Pa/h: always, without a barometer, without air. */
@@ -60,6 +62,12 @@ export function fitLegs(input: LegFitInput): LegFit | null {
     if (fit !== null && fit.enough) break
   }
   return fit === null ? null : asLegFit(fit, input, frame)
+}
+
+interface Noise {
+  /** Of a row about the fit, Pa², and how much its correlation in time makes it count. */
+  variance: number
+  inflation: number
 }
 
 interface LegShare {
@@ -111,10 +119,7 @@ function weightedFit(
   if (solution === null) return null
   const settled = solution
   const used = shares.filter((share) => !share.aside)
-  const jackknife =
-    used.length < 3
-      ? []
-      : used.flatMap((left) => solve(shares, noise, tau2, settled.values, left)?.values ?? [])
+  const jackknife = used.length < 3 ? [] : leaveOneOut(shares, noise, tau2, settled.values)
   return { solution, jackknife, shares, memoryHours, enough }
 }
 
@@ -123,29 +128,59 @@ interface Solution {
   covariance: Float64Array
 }
 
+interface Sums {
+  normal: Float64Array
+  right: Float64Array
+}
+
 /** Posterior of the unknowns: weighted normal equations plus what is known before (gas response, shape). */
 function solve(
   shares: readonly LegShare[],
-  noise: { variance: number; inflation: number },
+  noise: Noise,
   tau2: number,
   before: Float64Array | null,
-  without?: LegShare,
 ): Solution | null {
-  const normal = new Float64Array(UNKNOWNS * UNKNOWNS)
-  const right = new Float64Array(UNKNOWNS)
-  for (const share of shares) {
-    if (share.aside || share === without) continue
-    const weight = weightOf(share, noise, tau2)
-    for (let i = 0; i < normal.length; i += 1) normal[i] = at(normal, i) + weight * at(share.leg.normal, i)
-    for (let i = 0; i < UNKNOWNS; i += 1) right[i] = at(right, i) + weight * at(share.leg.right, i)
-  }
+  return solveSums(sumsOf(shares, noise, tau2), before)
+}
+
+function sumsOf(shares: readonly LegShare[], noise: Noise, tau2: number): Sums {
+  const sums = { normal: new Float64Array(UNKNOWNS * UNKNOWNS), right: new Float64Array(UNKNOWNS) }
+  for (const share of shares) if (!share.aside) addLeg(sums, share.leg, weightOf(share, noise, tau2))
+  return sums
+}
+
+function addLeg({ normal, right }: Sums, leg: LegEquations, weight: number): void {
+  for (let i = 0; i < normal.length; i += 1) normal[i] = at(normal, i) + weight * at(leg.normal, i)
+  for (let i = 0; i < UNKNOWNS; i += 1) right[i] = at(right, i) + weight * at(leg.right, i)
+}
+
+/** The fit without each leg in turn, from the same sums. */
+function leaveOneOut(
+  shares: readonly LegShare[],
+  noise: Noise,
+  tau2: number,
+  before: Float64Array,
+): Float64Array[] {
+  const whole = sumsOf(shares, noise, tau2)
+  return shares
+    .filter((share) => !share.aside)
+    .flatMap((share) => {
+      const sums = { normal: whole.normal.slice(), right: whole.right.slice() }
+      addLeg(sums, share.leg, -weightOf(share, noise, tau2))
+      return solveSums(sums, before)?.values ?? []
+    })
+}
+
+/** Adds what is known before to the sums (they are used up) and solves. */
+function solveSums({ normal, right }: Sums, before: Float64Array | null): Solution | null {
   addKnownGasResponse(normal, right)
+  addKnownWarming(normal, right)
   const rate = before === null ? roughRate(normal, right) : at(before, 0) + at(before, 1)
   addKnownShape(normal, rate)
   return nonNegative(normal, right)
 }
 
-const weightOf = (share: LegShare, noise: { variance: number; inflation: number }, tau2: number): number => {
+const weightOf = (share: LegShare, noise: Noise, tau2: number): number => {
   const variance = noise.variance * noise.inflation
   const { leg } = share
   const own =
@@ -156,13 +191,19 @@ const weightOf = (share: LegShare, noise: { variance: number; inflation: number 
 function addKnownGasResponse(normal: Float64Array, right: Float64Array): void {
   const each = 1 / GAS_RESPONSE_EACH.sigma ** 2
   const sum = 1 / GAS_RESPONSE_SUM.sigma ** 2
-  for (let j = 2; j < UNKNOWNS; j += 1) {
-    for (let k = 2; k < UNKNOWNS; k += 1) {
+  for (let j = 2; j < 5; j += 1) {
+    for (let k = 2; k < 5; k += 1) {
       const index = j * UNKNOWNS + k
       normal[index] = at(normal, index) + sum + (j === k ? each : 0)
     }
     right[j] = at(right, j) + sum * GAS_RESPONSE_SUM.mean + each * GAS_RESPONSE_EACH.mean
   }
+}
+
+function addKnownWarming(normal: Float64Array, right: Float64Array): void {
+  const last = UNKNOWNS - 1
+  normal[last * UNKNOWNS + last] = at(normal, last * UNKNOWNS + last) + 1 / WARMING.sigma ** 2
+  right[last] = at(right, last) + WARMING.mean / WARMING.sigma ** 2
 }
 
 /** The light ridge: orifice − laminar is nought, give or take `SHAPE_SIGMA` of the whole rate. */
@@ -241,11 +282,7 @@ function leftovers(leg: LegEquations, values: Float64Array): Float64Array {
  * Each leg's leftover slope: legs far off the rest are set aside (never more than three in ten), and what
  * the others scatter beyond their noise comes back as a variance of the rate (DerSimonian and Laird's).
  */
-function judgeLegs(
-  shares: LegShare[],
-  values: Float64Array,
-  noise: { variance: number; inflation: number },
-): number {
+function judgeLegs(shares: LegShare[], values: Float64Array, noise: Noise): number {
   for (const share of shares) {
     const { leg } = share
     const rest = leftovers(leg, values)

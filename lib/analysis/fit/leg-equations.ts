@@ -4,8 +4,12 @@ import { mergeBins, type LegPoint } from '../legs'
 import { laminarDrivePa, orificeDrivePa } from './leak-law'
 import { at, type Symmetric } from './symmetric'
 
-/** Unknowns of the fit: orifice and laminar rate at mid-band (Pa/h), gas response to air and its two lags (Pa/K). */
-export const UNKNOWNS = 5
+/**
+ * Unknowns of the fit: orifice and laminar rate at mid-band (Pa/h), gas response to air and its two lags (Pa/K),
+ * and what the gas still gives back while it warms after a stop (Pa at the stop, falling off in a minute).
+ */
+export const UNKNOWNS = 6
+const SETTLING_SECONDS = 60
 
 /** What the fit needs of a leg: its bins, when it began, and where its hold began. */
 export interface FitLeg {
@@ -46,10 +50,11 @@ const REFERENCE_K = 293.15
  * One leg's part of the fit: absolute pressure regressed, with an intercept of its own, on the integrals of
  * both leak laws at the pressures that were, and on the gas temperature that drives it. Missing channels leave
  * their columns at nought. The first minutes of a long leg that opens its hold are left out, since the gas
- * still warms back. Null with fewer than 3 usable bins.
+ * still warms back; what is left of that has a column of its own. Null with fewer than 3 usable bins.
  */
 export function legEquations(leg: FitLeg, frame: BandFrame): LegEquations | null {
   const points = mergedPoints(leg)
+  const sinceStopSeconds = (leg.startedAt - leg.holdStartedAt) / 1000
   const count = points.length
   if (count < 3) return null
   const hasAir = points.every((point) => Number.isFinite(point.airC + point.laggedC + point.slowC))
@@ -82,7 +87,8 @@ export function legEquations(leg: FitLeg, frame: BandFrame): LegEquations | null
     hoursOf[row] = here.hours
     pressure[row] = insidePa
     const gas = hasAir ? [point.airC, point.laggedC, point.slowC] : [0, 0, 0]
-    design.set([orifice, laminar, ...gas], row * UNKNOWNS)
+    const warming = -Math.exp(-(sinceStopSeconds + point.offsetSeconds) / SETTLING_SECONDS)
+    design.set([orifice, laminar, ...gas, warming], row * UNKNOWNS)
   })
   const hours = at(hoursOf, count - 1) - at(hoursOf, 0)
   centreColumns(design, count, UNKNOWNS)
@@ -96,7 +102,7 @@ export function legEquations(leg: FitLeg, frame: BandFrame): LegEquations | null
 function mergedPoints({ bins, startedAt, holdStartedAt }: FitLeg): LegPoint[] {
   const lengthSeconds = (bins.offsetSeconds.at(-1) ?? 0) - (bins.offsetSeconds[0] ?? 0)
   const sinceHoldSeconds = (startedAt - holdStartedAt) / 1000
-  const settlingSeconds = Math.min(480, 0.12 * lengthSeconds) - Math.max(0, sinceHoldSeconds - 60)
+  const settlingSeconds = Math.min(300, 0.08 * lengthSeconds) - Math.max(0, sinceHoldSeconds - 60)
   return mergeBins(bins, MAX_ROWS, settlingSeconds)
 }
 

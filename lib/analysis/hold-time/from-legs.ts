@@ -6,7 +6,8 @@ import { allLegs, isNumber, Z95 } from './shared'
 const BOUND_OVER = 0.24
 /** A day's leg of a boat this tight says enough; more would be a claim about weeks (judged). */
 const LONGEST_SECONDS = 14 * 86_400
-const LEAST_HOURS = 0.4
+/** Less than this of legs is no record yet. */
+export const LEAST_LEG_HOURS = 0.4
 
 /**
  * Hold time by the physical fit over the legs. Value and interval where the rate stands clear of its error,
@@ -24,15 +25,18 @@ export function holdTimeFromLegs(input: HoldTimeInput): HoldTimeEstimate | null 
     cutInPa,
     standardPressurePa: input.standardPressurePa,
   })
-  if (fit === null || fit.hours < LEAST_HOURS) return null
+  if (fit === null || fit.hours < LEAST_LEG_HOURS) return null
   const bandPa = cutOutPa - cutInPa
-  const secondsAt = (paPerHour: number): number => (bandPa / paPerHour) * 3600
   const lowRate = fit.ratePaPerHour - Z95 * fit.rateSigma
   const highRate = fit.ratePaPerHour + Z95 * fit.rateSigma
   const bounded = fit.rateSigma > BOUND_OVER * fit.ratePaPerHour || fit.holdSeconds > LONGEST_SECONDS
-  const low = Math.min(secondsAt(highRate), LONGEST_SECONDS)
-  const seconds = bounded ? low : secondsAt(fit.ratePaPerHour)
-  const high = bounded ? null : secondsAt(lowRate)
+  // A band that nobody told widens the hold time, not the rate.
+  const logSigma = Math.hypot(fit.rateSigma / Math.max(fit.ratePaPerHour, 1), input.bandDoubt)
+  const shrink = Math.exp(-Z95 * input.bandDoubt)
+  const atHighRate = Math.min((bandPa / highRate) * 3600, LONGEST_SECONDS)
+  const low = bounded ? atHighRate * shrink : fit.holdSeconds * Math.exp(-Z95 * logSigma)
+  const seconds = bounded ? low : fit.holdSeconds
+  const high = bounded ? null : fit.holdSeconds * Math.exp(Z95 * logSigma)
   const holds = new Set(legs.map((leg) => leg.holdStartedAt)).size
   return {
     method: 'legs',
@@ -46,7 +50,7 @@ export function holdTimeFromLegs(input: HoldTimeInput): HoldTimeEstimate | null 
     legsSetAside: fit.legsSetAside,
     hours: fit.hours,
     compensated: fit.compensated,
-    model: modelOf(fit, input, { cutOutPa, cutInPa, seconds, low, high, bounded }),
+    model: modelOf(fit, input, { cutOutPa, cutInPa, seconds, low, high, bounded, logSigma }),
   }
 }
 
@@ -54,6 +58,7 @@ function modelOf(
   fit: LegFit,
   input: HoldTimeInput,
   band: {
+    logSigma: number
     cutOutPa: number
     cutInPa: number
     seconds: number
@@ -71,7 +76,7 @@ function modelOf(
     lowSeconds: band.low,
     highSeconds: band.high,
     bound: band.bounded ? 'at-least' : null,
-    logSigma: Math.min(0.5, fit.rateSigma / Math.max(fit.ratePaPerHour, 1)),
+    logSigma: Math.min(0.5, band.logSigma),
     observedHoldSeconds: band.seconds * (Number.isFinite(share) && share > 0 ? share : 1),
     standardPressurePa: input.standardPressurePa,
     cutOutPa: band.cutOutPa,

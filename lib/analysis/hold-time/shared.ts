@@ -8,9 +8,15 @@ export const DAY_MS = 24 * HOUR_MS
 export const isNumber = (value: number | null | undefined): value is number =>
   typeof value === 'number' && Number.isFinite(value)
 
-/** Legs that count, the open one with them. */
+/** The newest legs are enough for any estimate, and bound its cost. */
+const MOST_LEGS = 96
+
+/** Legs that count, newest first and no more than `MOST_LEGS`, the open one with them. */
 export function allLegs(input: Pick<HoldTimeInput, 'legs' | 'open' | 'at'>): FitLeg[] {
-  const legs: FitLeg[] = input.legs.filter((leg) => !leg.setAside)
+  const legs: FitLeg[] = input.legs
+    .filter((leg) => !leg.setAside)
+    .sort((a, b) => b.startedAt - a.startedAt)
+    .slice(0, MOST_LEGS)
   const open = input.open.leg
   if (open === null || open.setAside) return legs
   const lastSeconds = open.bins.offsetSeconds.at(-1) ?? 0

@@ -11,6 +11,8 @@ export interface HoldTimeInput {
   cutOutPa: number | null
   settledPa: number | null
   cutInPa: number | null
+  /** Relative doubt of cut-out − cut-in where neither switch nor set-up told it (0 = known). */
+  bandDoubt: number
   /** The place's standard pressure, Pa. */
   standardPressurePa: number
   /** On-demand systems have no standing vacuum: no hold time. */
