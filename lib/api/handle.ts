@@ -68,7 +68,7 @@ export function handle(
           now: now(request),
           request,
         }
-        const output = operation.output.parse(await call(asked))
+        const output = operation.output.parse(await call(asked).catch(asConflict))
         return Response.json(output, { status: operation.status ?? 200 })
       },
       (error) => log.error({ err: error, method: operation.method, path: operation.path }, 'request failed'),
@@ -112,6 +112,17 @@ async function readInput(operation: Operation, request: Request): Promise<unknow
   const parsed = operation.body.safeParse(await readJson(request))
   if (!parsed.success) throw invalid('invalid', parsed.error)
   return parsed.data
+}
+
+/** PostgreSQL's codes for a key, or a span of time, that is taken. */
+const TAKEN_CODES = new Set(['23505', '23P01'])
+
+function asConflict(error: unknown): never {
+  if (error instanceof Error && 'code' in error && TAKEN_CODES.has(String(error.code)))
+    throw new Problem('conflict', 'Something like it is there already, or overlaps in time with it.', {
+      cause: error,
+    })
+  throw error
 }
 
 function invalid(kind: 'bad-request' | 'invalid', error: z.ZodError): Problem {

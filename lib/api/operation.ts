@@ -19,6 +19,8 @@ export interface Operation<
   params?: Params
   query?: Query
   body?: Body
+  /** A form instead of JSON; its handler reads it itself. */
+  form?: z.ZodType
   output: Output
   /** Of the answer when all is well; default 200. */
   status?: number
