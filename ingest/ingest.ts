@@ -1,0 +1,167 @@
+import {
+  fittingsOfLogger,
+  lockLogger,
+  noteHeard,
+  otherSerials,
+  type IngestLogger,
+} from '@/db/queries/ingest-loggers'
+import { limitLockWait, lockStates, noteSystemHeard } from '@/db/queries/system-state'
+import { answerByKey, insertUpload, lastShiftSeconds, nextUploadId } from '@/db/queries/uploads'
+import { asIngest, type Trx } from '@/db/roles'
+import { check, possibleSerials, type Checked } from '@/ingest/check'
+import { clockOffsetSeconds, shiftSeconds } from '@/ingest/clock'
+import { parseCsv } from '@/ingest/parse-csv'
+import { parseSenml } from '@/ingest/parse-senml'
+import { formatOf, readBody, type Format } from '@/ingest/read-body'
+import type { Reason, RecordColumns } from '@/ingest/records'
+import { store } from '@/ingest/store'
+import { takeIn } from '@/ingest/take-in'
+import { refuseRetired, whoSends } from '@/ingest/who-sends'
+import { Problem } from '@/lib/problem'
+
+/** The answer to an upload, as the contract has it. */
+export interface UploadAnswer {
+  upload: string
+  samples: { received: number; stored: number; duplicate: number; conflicting: number; rejected: number }
+  rejected: { index: number; reason: Reason }[]
+  rejectedRecords: number
+  clock: { offsetSeconds: number | null }
+  serverTime: string
+  next: { intervalSeconds: number; until: string | null }
+}
+
+const MAX_KEY_LENGTH = 200
+
+/**
+ * Takes one upload in, from its request to the answer: read, parse, check, store, fold, judge, in one transaction.
+ * The answer exists only once all of it is committed.
+ * @param receivedAt the moment of receipt: relative times and the clock's offset count from it.
+ * @throws Problem for every refusal; then nothing was changed.
+ */
+export async function ingest(request: Request, receivedAt: Date): Promise<UploadAnswer> {
+  const sender = await whoSends(request)
+  const format = formatOf(request.headers.get('content-type'))
+  const key = idempotencyKey(request.headers)
+  const body = await readBody(request)
+  const records = format === 'senml' ? parseSenml(body, receivedAt.getTime()) : parseCsv(body)
+  const offsetSeconds = clockOffsetSeconds(request.headers.get('date'), receivedAt.getTime())
+  return asIngest((trx) => takeUpload(trx, { sender, format, key, records, offsetSeconds, receivedAt }))
+}
+
+function idempotencyKey(headers: Headers): string | null {
+  const key = headers.get('idempotency-key')
+  if (key === null || key === '') return null
+  if (key.length > MAX_KEY_LENGTH)
+    throw new Problem('bad-request', `An Idempotency-Key has at most ${MAX_KEY_LENGTH} characters.`)
+  return key
+}
+
+interface Upload {
+  sender: IngestLogger
+  format: Format
+  key: string | null
+  records: RecordColumns
+  offsetSeconds: number | null
+  receivedAt: Date
+}
+
+async function takeUpload(trx: Trx, upload: Upload): Promise<UploadAnswer> {
+  const { format, key, records, offsetSeconds, receivedAt } = upload
+  await limitLockWait(trx)
+  const logger = await lockLogger(trx, upload.sender.id)
+  if (logger === null) throw new Problem('unknown-key', 'The logger is no longer registered.')
+  refuseRetired(logger)
+  if (key !== null) {
+    const before = await answerByKey(trx, logger.id, key, receivedAt)
+    if (before !== null) return before.answer as UploadAnswer // written by this function, under this key
+  }
+
+  const fittings = await fittingsOfLogger(trx, logger.id)
+  const shift = shiftSeconds(
+    offsetSeconds,
+    offsetSeconds === null ? null : await lastShiftSeconds(trx, logger.id),
+  )
+  const checked = check(records, {
+    receiptMs: receivedAt.getTime(),
+    offsetSeconds: offsetSeconds ?? 0,
+    shiftSeconds: shift,
+    sealed: fittings.map(({ fromMs, toMs, sealedUntilMs }) => ({
+      fromMs,
+      toMs: Math.min(toMs, sealedUntilMs),
+    })),
+    otherLoggers: await otherLoggers(trx, logger.id, records),
+  })
+  const { batch } = checked
+  if (batch.count === 0) throw nothingUsable(checked)
+
+  const firstMs = batch.at[0] ?? 0
+  const lastMs = batch.at[batch.count - 1] ?? 0
+  const touched = fittings.filter(({ fromMs, toMs }) => fromMs <= lastMs && toMs > firstMs)
+  const states = await lockStates(
+    trx,
+    touched.map(({ systemId }) => systemId),
+  )
+  const id = await nextUploadId(trx)
+  const stored = await store(trx, logger.id, id, batch)
+  await noteHeard(trx, logger.id, receivedAt, offsetSeconds)
+  const answer: UploadAnswer = {
+    upload: id,
+    samples: {
+      received: batch.count + checked.rejectedSamples,
+      stored: stored.stored,
+      duplicate: stored.duplicate,
+      conflicting: stored.conflicting,
+      rejected: checked.rejectedSamples,
+    },
+    rejected: checked.rejected,
+    rejectedRecords: checked.rejectedRecords,
+    clock: { offsetSeconds },
+    serverTime: receivedAt.toISOString(),
+    next: rhythm(logger, receivedAt),
+  }
+  await insertUpload(trx, {
+    id,
+    loggerId: logger.id,
+    receivedAt,
+    idempotencyKey: key,
+    format,
+    firstMs,
+    lastMs,
+    ...answer.samples,
+    clockOffsetSeconds: offsetSeconds,
+    shiftSeconds: shift,
+    answer,
+    importedBy: null,
+  })
+  for (const state of states) {
+    await noteSystemHeard(trx, state.systemId, receivedAt)
+    const spans = touched.filter(({ systemId }) => systemId === state.systemId)
+    await takeIn(trx, state, spans, stored.changed, receivedAt)
+  }
+  return answer
+}
+
+async function otherLoggers(trx: Trx, loggerId: string, records: RecordColumns): Promise<Set<number>> {
+  const words = possibleSerials(records.names)
+  const others = await otherSerials(trx, loggerId, [...words.keys()])
+  return new Set([...others].flatMap((serial) => words.get(serial) ?? []))
+}
+
+function nothingUsable({ rejected, rejectedRecords }: Checked): Problem {
+  const [first] = rejected
+  const why =
+    first === undefined
+      ? 'There is no measurement in it.'
+      : `All ${rejectedRecords} records were refused; record ${first.index} because: ${first.reason}.`
+  return new Problem('nothing-usable', `${why} Nothing was stored; do not send it again as it is.`, {
+    extensions: { rejected, rejectedRecords },
+  })
+}
+
+/** The rhythm asked for: a finer one while somebody watches. */
+function rhythm(logger: IngestLogger, now: Date): UploadAnswer['next'] {
+  const { fineIntervalSeconds, fineUntil, intervalSeconds } = logger
+  return fineIntervalSeconds !== null && fineUntil !== null && fineUntil > now
+    ? { intervalSeconds: fineIntervalSeconds, until: fineUntil.toISOString() }
+    : { intervalSeconds, until: null }
+}

@@ -1,0 +1,46 @@
+import { refreshDays } from '@/db/queries/system-days'
+import type { SystemState } from '@/db/queries/system-state'
+import type { Trx } from '@/db/roles'
+import { derive, type Change, type Derived } from '@/ingest/derive'
+import { judge } from '@/ingest/judge'
+
+interface Span {
+  fromMs: number
+  toMs: number
+}
+
+/**
+ * Everything that follows from changed samples of a system: rows, days, figures, notices.
+ * @param spans when the logger was fitted to the system, half-open, epoch milliseconds.
+ * @param changed times of changed samples, ascending; only those within a span concern the system.
+ */
+export async function takeIn(
+  trx: Trx,
+  locked: SystemState,
+  spans: readonly Span[],
+  changed: Float64Array,
+  now: Date,
+): Promise<Derived> {
+  return settle(trx, locked, changeWithin(spans, changed), now)
+}
+
+/** Derives, and brings up to date what is computed from the rows. */
+export async function settle(
+  trx: Trx,
+  locked: SystemState,
+  change: Change | null,
+  now: Date,
+  how: (trx: Trx, locked: SystemState, change: Change | null) => Promise<Derived> = derive,
+): Promise<Derived> {
+  const derived = await how(trx, locked, change)
+  if (derived.span !== null) await refreshDays(trx, locked.systemId, derived.span.fromMs, derived.span.toMs)
+  await judge(trx, locked.systemId, now)
+  return derived
+}
+
+function changeWithin(spans: readonly Span[], changed: Float64Array): Change | null {
+  const within = (at: number) => spans.some(({ fromMs, toMs }) => at >= fromMs && at < toMs)
+  const fromMs = changed.find(within)
+  const toMs = changed.findLast(within)
+  return fromMs === undefined || toMs === undefined ? null : { fromMs, toMs }
+}

@@ -1,0 +1,7 @@
+export { factItems, statementAt } from './facts'
+export { corrector, foldItems } from './fold-items'
+export { figuresAt, figuresBasis, recordRowsAt, type FiguresBasis } from './figures-at'
+export { openRowsAt } from './open-rows-at'
+export { stateAt } from './state-at'
+export { storeFigures, type StoredFigures } from './store-figures'
+export { summaryAt, toSummary } from './summary-at'
