@@ -171,6 +171,10 @@ export function pushHold(
   if (hold.endedAt <= hold.startedAt) return
   const settledPa = settledTopPa(state, hold, ending)
   const setAside = hold.setAside || state.statement !== null
+  const seconds = (hold.endedAt - hold.startedAt) / SECOND
+  if (ending === 'leak' && hold.flushes === 0 && settledPa !== null && hold.endPa !== null) {
+    state.slopePaPerSecond = Math.max(0, (settledPa - hold.endPa) / seconds)
+  }
   if (settledPa !== null && !setAside && ending !== 'interrupted') pushRing(state.rings.settledPa, settledPa)
   rows.push({
     table: 'hold',

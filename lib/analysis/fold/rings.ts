@@ -39,12 +39,12 @@ export function learnedCutInPa(state: FoldState): number {
 }
 /**
  * Samples far apart hide falls, so that starts lie at the switch's level or anywhere above it: the lowest
- * levels that agree within 0.15 inHg are the switch's. Null until four do.
+ * levels that agree within 0.2 inHg are the switch's. Null until four do.
  */
 function lowestCluster(levels: readonly number[]): number | null {
   const sorted = [...levels].sort((a, b) => a - b)
   const size = Math.max(4, Math.ceil(sorted.length / 5))
-  const from = sorted.findIndex((low, i) => (sorted[i + size - 1] ?? Infinity) - low <= 0.15 * INHG)
+  const from = sorted.findIndex((low, i) => (sorted[i + size - 1] ?? Infinity) - low <= 0.2 * INHG)
   return from < 0 ? null : ringMedian(sorted.slice(from, from + size))
 }
 export const learnedCutOutPa = (state: FoldState): number =>

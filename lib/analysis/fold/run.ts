@@ -1,5 +1,5 @@
 import { CLOSE_SAMPLES_MS, FLUSH_PA, INHG, MINUTE, RING_ENOUGH, SECOND, START_FALL_PA } from './constants'
-import { fallPa, noiseFloorPa, pushFlush, settlingPa } from './fall'
+import { fallPa, noiseFloorPa, pushFlush, settleFall, settlingPa } from './fall'
 import { endHold, offLinePa, openHold, pushHold } from './hold'
 import { leakSlope } from './leg'
 import { learnedCutInPa, learnedCutOutPa, pushRing, ringMedian } from './rings'
@@ -19,6 +19,7 @@ export interface Start {
 
 /** The pump was seen to start (or found running): ends the hold, begins a run. */
 export function startRun(state: FoldState, start: Start, rows: Row[]): void {
+  settleEarlierFall(state, start, rows)
   const { hold } = state
   const before = vacuumBefore(state)
   const beforePa = before?.pa ?? null
@@ -57,6 +58,16 @@ export function startRun(state: FoldState, start: Start, rows: Row[]): void {
   }
 }
 
+/** A fall that had ended over the cut-in well before the start did not cause it. */
+function settleEarlierFall(state: FoldState, start: Start, rows: Row[]): void {
+  const { fall, hold } = state
+  if (fall === null || hold === null || start.at - fall.lowAt <= 10 * SECOND) return
+  if (fall.lowPa < learnedCutInPa(state) + 0.1 * INHG) return
+  settleFall(state, hold, start.knownAt, rows)
+  hold.lastAt = fall.lowAt
+  hold.lastPa = fall.lowPa
+}
+
 /** Vacuum before the start: where a fall in progress came from, the last of the hold, or the stop before it. */
 function vacuumBefore(state: FoldState): { at: Instant; pa: number } | null {
   const { hold, fall } = state
@@ -65,6 +76,9 @@ function vacuumBefore(state: FoldState): { at: Instant; pa: number } | null {
   if (hold.lastAt !== null && hold.lastPa !== null) return { at: hold.lastAt, pa: hold.lastPa }
   return hold.startSeen && hold.cutOutPa !== null ? { at: hold.startedAt, pa: hold.cutOutPa } : null
 }
+
+/** A leak may be so much faster than its slope was seen to be before it counts as a fall. */
+const LEAK_MARGIN = 1.3
 
 /** Fall to the start beyond what leak and settling explain, Pa; null where either end is unknown. */
 function suddenFallPa(
@@ -76,7 +90,8 @@ function suddenFallPa(
   const { hold, fall } = state
   const slope = fall?.slopePaPerSecond ?? leakSlope(state)
   const settled = hold === null ? 0 : settlingPa(hold, before.at, start.at)
-  const suddenPa = before.pa - start.startPa - 1.2 * slope * ((start.at - before.at) / SECOND) - settled
+  const suddenPa =
+    before.pa - start.startPa - LEAK_MARGIN * slope * ((start.at - before.at) / SECOND) - settled
   return fall === null ? suddenPa : Math.max(suddenPa, fallPa(fall))
 }
 
@@ -356,7 +371,7 @@ function learnFromRun(
 function learnSparseStart(state: FoldState, run: OpenRun): void {
   if (run.beforePa === null || run.startSpacingMs > 2 * MINUTE) return
   const lostPa = state.slopePaPerSecond * (run.startSpacingMs / SECOND)
-  if (lostPa < 0.15 * INHG) pushRing(state.rings.sparseStartPa, run.beforePa - lostPa / 2)
+  if (lostPa < 0.4 * INHG) pushRing(state.rings.sparseStartPa, run.beforePa - lostPa / 2)
 }
 
 /** A breaker restarts anywhere, a switch at one level: five starts in a row alike are the switch moved. */

@@ -55,18 +55,24 @@ export function isOverLong(state: FoldState, end: RunEnd): boolean {
 }
 
 /**
- * No vacuum channel: leak runs refill one differential and are all alike, so the lowest tight cluster of
- * lengths is theirs; longer runs were flushes. Unknown until five of at least eight lie within 5 %.
+ * No vacuum channel: leak runs refill one differential and are all alike, and no run that a flush started is
+ * shorter; so a tight cluster at the low end of the last lengths is theirs, and longer runs were flushes.
+ * Unknown until eight runs, of which six (three in ten) lie within 5 % with next to none below them.
  */
 function triggerByLengthAlone(state: FoldState, end: RunEnd): Trigger {
-  const lengths = state.rings.runSeconds
-  if (end.seconds === null || lengths.length < 8) return 'unknown'
-  const sorted = [...lengths].sort((a, b) => a - b)
-  const size = Math.max(5, Math.ceil(0.25 * sorted.length))
-  const from = sorted.findIndex((low, i) => (sorted[i + size - 1] ?? Infinity) <= low * 1.05 + 0.5)
-  if (from < 0) return 'unknown'
-  const usual = ringMedian(sorted.slice(from, from + size)) ?? 0
-  if (end.uncertaintySeconds > 0.1 * usual) return 'unknown'
-  if (Math.abs(end.seconds - usual) <= 0.05 * usual + 1) return 'leak'
+  const usual = leakRunSeconds(state.rings.runSeconds)
+  if (end.seconds === null || usual === null || end.uncertaintySeconds > 0.1 * usual) return 'unknown'
+  if (Math.abs(end.seconds - usual) <= 0.06 * usual + 1) return 'leak'
   return end.seconds > 1.12 * usual + 2 ? 'flush' : 'unknown'
+}
+
+/** Length of a leak run among all runs' lengths; null where no cluster tells it. */
+export function leakRunSeconds(lengths: readonly number[]): number | null {
+  if (lengths.length < 8) return null
+  const sorted = [...lengths].sort((a, b) => a - b)
+  const size = Math.max(6, Math.ceil(0.3 * sorted.length))
+  const from = sorted.findIndex((low, i) => (sorted[i + size - 1] ?? Infinity) <= low * 1.05 + 0.5)
+  const low = sorted[from]
+  if (low === undefined || from > 0.1 * sorted.length) return null
+  return ringMedian(sorted.filter((seconds) => seconds >= low && seconds <= low * 1.1 + 1))
 }
