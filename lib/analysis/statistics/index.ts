@@ -1,3 +1,4 @@
+export * from './censored-ratio'
 export * from './control-charts'
 export * from './distributions'
 export * from './hodges-lehmann'
