@@ -45,7 +45,7 @@ export type HarbourZone = { timeZone: string; offsetSeconds: number }
 export function eveningZone(nowMs: number): HarbourZone {
   const utcHour = Math.floor(nowMs / MS_PER_HOUR) % 24
   let hours = 20 - utcHour
-  if (hours < -12) hours += 24
+  if (hours > 14) hours -= 24
   const sign = hours > 0 ? '-' : '+'
   return {
     timeZone: hours === 0 ? 'Etc/GMT' : `Etc/GMT${sign}${Math.abs(hours)}`,
