@@ -47,8 +47,8 @@ export default async function RootLayout({ children }: { children: ReactNode }) 
           <main id="sheet" tabIndex={-1} className="flex-1 pb-10 outline-none">
             {children}
           </main>
+          <Footer theme={theme} />
         </UnitsProvider>
-        <Footer />
       </body>
     </html>
   )

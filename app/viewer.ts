@@ -1,10 +1,18 @@
-import type { Viewer } from '@/components/shell/viewer'
+import { type Role, type Viewer } from '@/components/shell/viewer'
+import { requireViewer, whoViews } from '@/lib/auth/page'
 
-export async function viewer(): Promise<Viewer | null> {
-  const roles = process.env.MW_DEV_VIEWER
-  return roles === 'owner'
-    ? { name: 'R. Quayle', roles: ['owner'], shopName: null }
-    : roles
-      ? { name: 'S. Marsh', roles: ['manager'], shopName: 'Saltern Quay' }
-      : null
+type Who = Awaited<ReturnType<typeof requireViewer>>
+
+function asViewer(who: Who): Viewer {
+  const roles: Role[] = [...new Set(who.memberships.map((membership) => membership.role))]
+  return { name: who.name, roles: who.ownsVessels ? ['owner', ...roles] : roles }
 }
+
+/** Who reads this page, or null. */
+export async function viewer(): Promise<Viewer | null> {
+  const who = await whoViews()
+  return who && asViewer(who)
+}
+
+/** Who reads this page; nobody is sent to sign in, and comes back to `path`. */
+export const signedInAt = async (path: string): Promise<Viewer> => asViewer(await requireViewer(path))

@@ -1,6 +1,6 @@
 import type { Metadata } from 'next'
 import { redirect } from 'next/navigation'
-import { isDemo } from '@/app/mode'
+import { demoPassword, isDemo } from '@/app/mode'
 import { viewer as currentViewer } from '@/app/viewer'
 import { homeOf } from '@/components/shell/viewer'
 import { DemoAccounts, type DemoAccount } from '@/components/sign-in/demo-accounts'
@@ -27,15 +27,9 @@ export default async function SignInPage({ searchParams }: { searchParams: Searc
   return (
     <>
       <TitleBlock title="Sign in" datum="For owners of connected boats and for the shops that keep them." />
-      <div className="sheet grid gap-x-16 gap-y-10 lg:grid-cols-[minmax(0,28em)_minmax(0,1fr)]">
+      <div className="sheet grid items-start gap-x-16 gap-y-10 lg:grid-cols-[minmax(0,28em)_minmax(0,1fr)]">
         <SignInForm goTo={goTo} />
-        {isDemo() ? (
-          <DemoAccounts
-            accounts={ACCOUNTS}
-            password={process.env.DEMO_PASSWORD ?? 'middle-watch-demo'}
-            goTo={goTo}
-          />
-        ) : null}
+        {isDemo() ? <DemoAccounts accounts={ACCOUNTS} password={demoPassword()} goTo={goTo} /> : null}
       </div>
     </>
   )

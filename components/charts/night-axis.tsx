@@ -21,13 +21,17 @@ export function NightAxis({ minutes = [0, 240, 480, 780, 960] }: { minutes?: rea
   )
 }
 
-/** Ends, middle of the night and the quiet hours' own edges, without labels that would touch. */
-export function axisMinutes(quiet: readonly [number, number]): number[] {
-  const wanted = [quiet[0], quiet[1], 0, STRIP_MINUTES, (quiet[0] + quiet[1]) / 2]
+/**
+ * The quiet hours' own edges first, then the strip's ends and the middle of the night where their labels would
+ * not touch: an end's label lies wholly inside the strip, so it needs more room than one centred on its place.
+ */
+export function axisMinutes(quiet: readonly [number, number], roomMinutes = 110): number[] {
+  const room = (minute: number) => (minute === 0 || minute === STRIP_MINUTES ? 1.5 : 1) * roomMinutes
   const kept: number[] = []
-  for (const minute of wanted) {
+  for (const minute of [quiet[0], quiet[1], 0, STRIP_MINUTES, (quiet[0] + quiet[1]) / 2]) {
     const inside = minute >= 0 && minute <= STRIP_MINUTES
-    if (inside && kept.every((other) => Math.abs(other - minute) >= 130)) kept.push(Math.round(minute))
+    if (inside && kept.every((other) => Math.abs(other - minute) >= room(minute)))
+      kept.push(Math.round(minute))
   }
   return kept.sort((a, b) => a - b)
 }

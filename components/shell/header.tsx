@@ -26,11 +26,13 @@ export function Header({ viewer, theme, demo }: { viewer: Viewer | null; theme: 
         <NavigationLinks items={navigationOf(viewer, demo)} />
       </div>
       <div className="ml-auto flex items-center gap-3 whitespace-nowrap">
-        <UnitsSelect />
-        <ThemeSelect initial={theme} />
+        <span className="hidden items-center gap-3 sm:inline-flex">
+          <UnitsSelect />
+          <ThemeSelect initial={theme} />
+        </span>
         {viewer ? (
           <>
-            <span className="hidden text-ink-2 lg:inline">{viewer.shopName ?? viewer.name}</span>
+            <span className="max-w-40 truncate text-ink-2">{viewer.name}</span>
             <SignOut />
           </>
         ) : (

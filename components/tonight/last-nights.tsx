@@ -31,7 +31,7 @@ export function LastNights({ nights, calm }: { nights: readonly Night[]; calm: b
         </div>
       ))}
       <span />
-      <NightAxis minutes={axisMinutes(quiet)} />
+      <NightAxis minutes={axisMinutes(quiet, 180)} />
       <span />
     </div>
   )

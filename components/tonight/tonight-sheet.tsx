@@ -18,5 +18,11 @@ export function TonightSheet() {
       </Empty>
     )
   }
-  return me.ownVessels.map((vessel) => <VesselTonight key={vessel.id} id={vessel.id} name={vessel.name} />)
+  return (
+    <div>
+      {me.ownVessels.map((vessel) => (
+        <VesselTonight key={vessel.id} id={vessel.id} name={vessel.name} />
+      ))}
+    </div>
+  )
 }

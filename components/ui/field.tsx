@@ -11,7 +11,7 @@ export function Field({
   const id = useId()
   const notes = [hint ? `${id}-hint` : '', error ? `${id}-error` : ''].filter(Boolean).join(' ')
   return (
-    <div className="grid gap-1.5">
+    <div className="grid content-start gap-1.5">
       <label htmlFor={id} className="font-semibold">
         {label}
       </label>

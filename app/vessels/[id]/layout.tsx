@@ -1,0 +1,9 @@
+import type { ReactNode } from 'react'
+import { VesselFrame } from '@/components/vessel/vessel-frame'
+
+type Props = { children: ReactNode; params: Promise<{ id: string }> }
+
+export default async function VesselLayout({ children, params }: Props) {
+  const { id } = await params
+  return <VesselFrame id={id}>{children}</VesselFrame>
+}
