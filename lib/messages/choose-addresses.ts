@@ -34,8 +34,8 @@ export interface Subject {
   transition: Transition
   /** Of a night warning: the chance of a run even when somebody flushes last thing. */
   chanceIfFlushedLast: number | null
-  /** Of a silent logger: the day that the owner is left in peace has passed. */
-  ownerToo: boolean
+  /** Of a silent logger: after a day the owner hears of it, and the shop not once more. */
+  audience: 'owner' | null
   /** Nobody but owners could be told: no shop looks after this vessel. */
   noShop: boolean
 }
@@ -53,6 +53,7 @@ export interface ChosenAddress {
  */
 export function chooseAddresses(person: Recipient, subject: Subject): ChosenAddress[] {
   if (person.as === 'shop' && !isForShopPerson(person, subject)) return []
+  if (person.as === 'owner' && subject.transition === 'escalated') return []
   return (['email', 'sms'] as const).flatMap((channel) => {
     const contact = contactsOf(person, channel).find((candidate) => wants(person, candidate, subject))
     return contact === undefined
@@ -63,6 +64,7 @@ export function chooseAddresses(person: Recipient, subject: Subject): ChosenAddr
 
 /** A shop's managers are told; what nobody took up goes on to those who agreed to be called at night as well. */
 function isForShopPerson(person: Recipient, subject: Subject): boolean {
+  if (subject.audience === 'owner') return false
   const isManager = person.roles.includes('manager')
   if (subject.transition !== 'escalated') return isManager
   return isManager || person.contacts.some((contact) => contact.settings.urgentAtNight)
@@ -104,7 +106,7 @@ function usualKinds(as: 'owner' | 'shop', channel: Channel, subject: Subject): N
   if (channel === 'sms') return BY_TEXT[as]
   if (as === 'shop') return SHOP_KINDS
   if (subject.noShop) return [...OWNER_KINDS, ...SHOP_KINDS]
-  return subject.ownerToo ? [...OWNER_KINDS, 'logger-silent'] : OWNER_KINDS
+  return subject.audience === 'owner' ? [...OWNER_KINDS, 'logger-silent'] : OWNER_KINDS
 }
 
 /** The lowest chance from which any of these people wants to be warned of a night. */

@@ -46,9 +46,8 @@ export const recordEvidenceSchema = z
     sinceLocal: z.string().nullable(),
     untilLocal: z.string().nullable(),
     fault: z.string().nullable(),
-    vessels: z.array(z.string()),
+    loggers: z.number(),
     harbour: z.string().nullable(),
-    ownerToo: z.boolean(),
   })
   .partial()
 export type RecordEvidence = z.infer<typeof recordEvidenceSchema>

@@ -114,7 +114,7 @@ function subjectOf(event: ToldEvent, noShop: boolean): Subject {
     kind: event.kind,
     transition: event.transition,
     chanceIfFlushedLast: typeof chance === 'number' ? chance : null,
-    ownerToo: event.evidence.ownerToo === true,
+    audience: event.evidence.audience === 'owner' ? 'owner' : null,
     noShop,
   }
 }

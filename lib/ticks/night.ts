@@ -10,8 +10,7 @@ import {
 import { closeNotice, openNotice, openNoticesOf, snoozedKinds } from '@/db/queries/notice-writes'
 import { recipientsOf } from '@/db/queries/recipients'
 import { nightWindows, type NightWindow } from '@/db/queries/zones'
-import { warns } from '@/lib/analysis/outlook'
-import type { Outlook, WarningDecision } from '@/lib/analysis/outlook/types'
+import { warns, type Outlook, type WarningDecision } from '@/lib/analysis/outlook'
 import { log } from '@/lib/log'
 import { lowestNightChance } from '@/lib/messages/choose-addresses'
 import { tell } from '@/lib/messages/tell'
@@ -101,6 +100,7 @@ function isOpen(given: GivenOutlook | undefined, now: Date): boolean {
 /** @returns the event to be told, or null. */
 async function giveNight(trx: Trx, system: Due, now: Date): Promise<string | null> {
   const outlook = await outlookAt(trx, system.systemId, now)
+  if (outlook === null) return null
   const decision = await decide(trx, system, outlook, now)
   await writeOutlook(trx, {
     systemId: system.systemId,

@@ -90,7 +90,12 @@ describe('telling an owner of a night', () => {
     const rows = await rowsOf()
     expect(rows.map((row) => row.channel)).toEqual(['email', 'sms'])
     const jobs = await database.knex('queue.job').where({ name: 'message' }).select('data')
-    expect(jobs.map((job) => job.data.messageId).filter((id) => ids.includes(id)).sort()).toEqual(ids.sort())
+    expect(
+      jobs
+        .map((job) => job.data.messageId)
+        .filter((id) => ids.includes(id))
+        .sort(),
+    ).toEqual(ids.sort())
     expect(rows.map((row) => row.useful_until.toISOString())).toEqual(Array(2).fill(EVIDENCE.quiet.to))
   })
 

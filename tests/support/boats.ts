@@ -1,4 +1,13 @@
+import { createHash } from 'node:crypto'
 import type { Knex } from '@/db/knex'
+import { ingest } from '@/ingest/ingest'
+import {
+  defaultBoat,
+  flowForBoatHold,
+  simulateBoat,
+  type BoatOverrides,
+  type SimSample,
+} from '@/simulator/boat'
 
 export interface Boat {
   vesselId: string
@@ -92,7 +101,7 @@ export async function makeBoat(knex: Knex, options: BoatOptions): Promise<Boat> 
     .insert({
       serial: `T${process.pid}-${serial}`,
       interval_seconds: 60,
-      channels: knex.raw("array['pump','vacuum','air','supply']"),
+      channels: knex.raw("array['pump','vacuum','air','barometer','supply']"),
     })
     .returning<{ id: number }[]>('id')
   const loggerId = String(logger?.id)
@@ -114,4 +123,63 @@ export async function makeBoat(knex: Knex, options: BoatOptions): Promise<Boat> 
     })
   }
   return { vesselId, systemId, ownerId, loggerId }
+}
+
+/** Days of a boat's life as its logger sends it, a reading a minute and one at each edge of the pump. */
+export interface Life {
+  /** How long the pump rests when nobody flushes; null = no leak at all. */
+  holdHours: number | null
+  fromMs: number
+  toMs: number
+  overrides?: BoatOverrides
+}
+
+/** Simulates a life and takes it in as an upload received at its end (or later). */
+export async function live(
+  knex: Knex,
+  boat: Boat,
+  life: Life,
+  receivedAt = new Date(life.toMs),
+): Promise<void> {
+  const plain = defaultBoat({ seed: Number(boat.systemId), ...life.overrides })
+  const leaks =
+    life.holdHours === null
+      ? []
+      : [
+          {
+            part: 'hose-1',
+            kind: 'orifice' as const,
+            flowPaM3PerS: flowForBoatHold(plain, 'orifice', life.holdHours * 3600),
+          },
+        ]
+  const spec = { ...plain, leaks: [...plain.leaks, ...leaks] }
+  await upload(knex, boat, simulateBoat(spec, life.fromMs, life.toMs).samples, receivedAt)
+}
+
+/** Takes samples in as the boat's own logger sends them. */
+export async function upload(
+  knex: Knex,
+  boat: Boat,
+  samples: readonly SimSample[],
+  receivedAt: Date,
+): Promise<void> {
+  const key = `key-of-${boat.loggerId}-${process.pid}`
+  const hash = createHash('sha256').update(key, 'utf8').digest()
+  await knex('logger').where({ id: boat.loggerId }).update({ key_hash: hash })
+  const lines = samples.map((sample) =>
+    [
+      new Date(sample.at).toISOString(),
+      sample.vacuumPa ?? '',
+      sample.pumpOn === null ? '' : Number(sample.pumpOn),
+      sample.airC ?? '',
+      sample.barometerPa ?? '',
+      sample.supplyV ?? '',
+    ].join(','),
+  )
+  const request = new Request('http://boats.example/api/ingest', {
+    method: 'POST',
+    headers: { authorization: `Bearer ${key}`, 'content-type': 'text/csv' },
+    body: ['time,vacuum_pa,pump,air_cel,barometer_pa,supply_v', ...lines].join('\n'),
+  })
+  await ingest(request, receivedAt)
 }

@@ -78,19 +78,28 @@ export const WORDS: Record<Exclude<NoticeKind, 'night-warning'>, Write> = {
     steps: ['Ask what was done aboard at that time, and look there first.'],
     text: 'the leak grew at once.',
   }),
-  'logger-silent': (evidence) => ({
-    subject: evidence.vessels
-      ? `${evidence.vessels.length} loggers in ${evidence.harbour ?? 'one harbour'} are silent`
-      : 'nothing heard from the logger',
-    finding: evidence.vessels
-      ? `Nothing has been heard from ${evidence.vessels.join(', ')}${evidence.sinceLocal ? ` since about ${evidence.sinceLocal}` : ''}. They lie in one harbour, so its network is the likely cause.`
-      : `Nothing has been heard from the logger${evidence.sinceLocal ? ` since ${evidence.sinceLocal}` : ''}. Until it is heard again nothing can be said of the coming nights.`,
-    sureness: null,
-    steps: evidence.vessels
-      ? ['Ask the harbour whether its network works.']
-      : ['See whether the logger has power and a connection. It keeps its readings and sends them later.'],
-    text: 'nothing heard from the logger.',
-  }),
+  'logger-silent': (evidence) => {
+    const since = evidence.sinceLocal ? ` since ${evidence.sinceLocal}` : ''
+    if (evidence.loggers === undefined) {
+      return {
+        subject: 'nothing heard from the logger',
+        finding: `Nothing has been heard from the logger${since}. Until it is heard again nothing can be said of the coming nights.`,
+        sureness: null,
+        steps: [
+          'See whether the logger has power and a connection. It keeps its readings and sends them later.',
+        ],
+        text: 'nothing heard from the logger.',
+      }
+    }
+    const place = evidence.harbour ?? 'one harbour'
+    return {
+      subject: `${evidence.loggers} loggers in ${place} are silent`,
+      finding: `Nothing has been heard from this boat and ${evidence.loggers - 1} others in ${place}${since}. They fell silent together, so the harbour’s network is the likely cause.`,
+      sureness: null,
+      steps: ['Ask the harbour whether its network works.', 'The fleet page shows which boats are unheard.'],
+      text: `${evidence.loggers} loggers in ${place} are silent.`,
+    }
+  },
   'sensor-fault': (evidence) => ({
     subject: 'the vacuum sensor reads what cannot be',
     finding: `The vacuum sensor cannot be trusted: ${evidence.fault ?? 'it reads what cannot be'}. Figures from it are held back.`,

@@ -1,0 +1,27 @@
+import type { Trx } from '@/db/roles'
+import { attachMonths, clearExpired, expireNotices } from '@/db/queries/housekeeping'
+import type { Tick } from '@/lib/ticks/run-tick'
+
+const DAY_MS = 86_400_000
+const MONTHS_AHEAD = 3
+/** A step is old news after a while: the leak is simply what it is. */
+const STEP_STANDS_MS = 14 * DAY_MS
+/** Signed-out sessions and spent secrets are kept for a while, for the question "was that me?". */
+const KEEP_MS = 30 * DAY_MS
+
+/** Partitions for the months to come, attached by the owner of the tables. */
+export const partitionTick: Tick = {
+  name: 'partitions',
+  role: 'owner',
+  work: async (trx, now) => ({ attached: await attachMonths(trx, now, MONTHS_AHEAD) }),
+}
+
+/** Ends notices that only time ends, and clears sessions, secrets and claims that have run out. */
+export const housekeepingTick: Tick = { name: 'housekeeping', role: 'service', work: tidy }
+
+export async function tidy(trx: Trx, now: Date): Promise<Record<string, number>> {
+  return {
+    expired: await expireNotices(trx, 'step', new Date(now.getTime() - STEP_STANDS_MS), now),
+    cleared: await clearExpired(trx, new Date(now.getTime() - KEEP_MS)),
+  }
+}
