@@ -18,14 +18,17 @@ export function quietHolds(period: ComparedPeriod): ComparedHold[] {
 }
 
 /**
- * How long each hold lasts, or would have: seen to its end; else by its own leak rate, where that is known
+ * How long each hold lasts, or would have: seen to its end by leak (without a vacuum channel: not ended by a
+ * run that a flush started); else by its own leak rate, where that is known
  * well, over the differential; else cut short at what was seen, or at what the upper end of its leak rate
  * allows if that is longer.
  */
 export function holdTimes(period: ComparedPeriod): Survival[] {
+  const flushRuns = new Set(period.runs.filter((run) => run.trigger === 'flush').map((run) => run.startedAt))
   return quietHolds(period).map((hold) => {
     const seconds = (hold.endedAt - hold.startedAt) / 1000
-    if (hold.ending === 'leak' || hold.ending === 'unknown') return { time: seconds, event: true }
+    const byLeak = hold.ending === 'leak' || (hold.ending === 'unknown' && !flushRuns.has(hold.endedAt))
+    if (byLeak && (hold.flushes ?? 0) === 0) return { time: seconds, event: true }
     const { leakRate } = hold
     const differentialPa = period.differentialPa
     if (leakRate === null || differentialPa === null) return { time: seconds, event: false }

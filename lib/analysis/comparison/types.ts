@@ -4,12 +4,20 @@ export type ComparedHold = {
   endedAt: number
   ending: 'leak' | 'flush' | 'unknown' | 'interrupted' | 'open'
   leakRate: { paPerHour: number; low: number; high: number } | null
+  /** Flushes within it that did not start the pump; they shorten it. */
+  flushes?: number
   /** Worked on or laid up then: left out. */
   setAside?: boolean
 }
 
 /** A run of the pump; a recharge rate that was not measured is null. */
-export type ComparedRun = { startedAt: number; stoppedAt: number; rechargePaPerSecond: number | null }
+export type ComparedRun = {
+  startedAt: number
+  stoppedAt: number
+  rechargePaPerSecond: number | null
+  /** What started it, where that is known: tells how the hold before ended if nothing measured vacuum. */
+  trigger?: 'leak' | 'flush' | 'startup' | 'unknown'
+}
 
 export type ComparedPeriod = {
   from: number
