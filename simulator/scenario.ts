@@ -23,15 +23,15 @@ export function demoScenario(options: {
     historyFromMs: options.anchorMs - HISTORY_DAYS * 86_400_000,
     shops: [
       { key: 'saltern', name: 'Saltern Quay Marine Sanitation', harbour: 'Port Averill' },
-      { key: 'stranger', name: 'Eastmere Boat Services', harbour: 'Eastmere' },
+      { key: 'stranger', name: 'Stranger Sound Boat Plumbing', harbour: 'Grey Sound' },
     ],
     people: [
-      { email: 'manager@saltern.example', name: 'Maren Oakes', shop: 'saltern', roles: ['manager'] },
-      { email: 'technician@saltern.example', name: 'Tobias Fenn', shop: 'saltern', roles: ['technician'] },
-      { email: 'installer@saltern.example', name: 'Inga Marsh', shop: 'saltern', roles: ['installer'] },
-      { email: 'owner@saltern.example', name: 'Oriel Sands', shop: null, roles: [] },
-      { email: 'manager@stranger.example', name: 'Magnus Weir', shop: 'stranger', roles: ['manager'] },
-      { email: 'owner@stranger.example', name: 'Odile Stone', shop: null, roles: [] },
+      { email: 'manager@saltern.example', name: 'Marit Sandhaven', shop: 'saltern', roles: ['manager'] },
+      { email: 'technician@saltern.example', name: 'Tobin Reedmace', shop: 'saltern', roles: ['technician'] },
+      { email: 'installer@saltern.example', name: 'Ines Kelpwright', shop: 'saltern', roles: ['installer'] },
+      { email: 'owner@saltern.example', name: 'Orla Quayle', shop: null, roles: [] },
+      { email: 'manager@stranger.example', name: 'Milo Outerbank', shop: 'stranger', roles: ['manager'] },
+      { email: 'owner@stranger.example', name: 'Oswin Farrow', shop: null, roles: [] },
     ],
     vessels: [
       leakingBoat(calendar),

@@ -89,6 +89,7 @@ export function loggerStories(calendar: Calendar): ScenarioVessel[] {
       name: 'Cold Comfort',
       story: "The second shop's boat, which nobody at Saltern Quay may see",
       berth: 'East pier 2',
+      harbour: 'Grey Sound',
       shop: 'stranger',
       ownerEmail: 'owner@stranger.example',
       systems: [
