@@ -81,9 +81,9 @@ export const boatItems: fc.Arbitrary<FoldItem[]> = fc
   })
 
 const pressure = fc.oneof(
-  fc.integer({ min: 250_000, max: 360_000 }).map((tenths) => tenths / 10),
-  fc.integer({ min: -200_000, max: 1_010_000 }).map((tenths) => tenths / 10),
-  fc.constant(33_000),
+  { weight: 20, arbitrary: fc.integer({ min: 250_000, max: 360_000 }).map((tenths) => tenths / 10) },
+  { weight: 1, arbitrary: fc.integer({ min: -200_000, max: 1_010_000 }).map((tenths) => tenths / 10) },
+  { weight: 5, arbitrary: fc.constant(33_000) },
 )
 const maybe = <T>(values: fc.Arbitrary<T>) => fc.option(values, { freq: 3 })
 
@@ -93,9 +93,9 @@ export const wildItems: fc.Arbitrary<FoldItem[]> = fc
     samples: fc.array(
       fc.record({
         afterMs: fc.oneof(
-          fc.integer({ min: 1, max: 3_000 }),
-          fc.integer({ min: 1_000, max: 120_000 }),
-          fc.integer({ min: 100_000, max: 20_000_000 }),
+          { weight: 10, arbitrary: fc.integer({ min: 1, max: 3_000 }) },
+          { weight: 20, arbitrary: fc.integer({ min: 1_000, max: 120_000 }) },
+          { weight: 1, arbitrary: fc.integer({ min: 100_000, max: 20_000_000 }) },
         ),
         vacuumPa: maybe(pressure),
         pumpOn: maybe(fc.boolean()),
@@ -103,7 +103,7 @@ export const wildItems: fc.Arbitrary<FoldItem[]> = fc
         barometerPa: maybe(fc.integer({ min: 500_000, max: 1_100_000 }).map((tenths) => tenths / 10)),
         supplyV: maybe(fc.integer({ min: 0, max: 6_000 }).map((hundredths) => hundredths / 100)),
       }),
-      { maxLength: 400 },
+      { maxLength: 400, size: 'max' },
     ),
     facts: fc.array(
       fc.oneof(
