@@ -36,7 +36,10 @@ export const pageQuerySchema = z.object({
 export const spanQuerySchema = pageQuerySchema.extend({
   from: queryInstantSchema.optional(),
   to: queryInstantSchema.optional(),
+  /** As of then: only what was known at that instant. */
+  at: queryInstantSchema.optional(),
 })
+export type SpanQuery = z.output<typeof spanQuerySchema>
 export const atQuerySchema = z.object({ at: queryInstantSchema.optional() })
 
 /** RFC 9457. `type` is stable; `detail` is a sentence a person can act on. */
