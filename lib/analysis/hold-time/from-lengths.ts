@@ -6,10 +6,12 @@ import type { HoldTimeEstimate, HoldTimeInput } from './types'
 const WINDOW_MS = 7 * DAY_MS
 /** The newest holds of the week: enough for any estimate, and bounded work for a pump that runs all the time. */
 const MOST_HOLDS = 240
-const FEWEST_NEAR = 4
+const FEWEST_NEAR = { short: 4, long: 6 }
 const FEWEST_HOLDS = 6
-/** Log-likelihood by which a hold time has to beat 'longer than anything seen' (odds of 55 to 1). */
-const CLEARLY = 4
+/** Log-likelihood by which a hold time has to beat 'longer than anything seen' (4: odds of 55 to 1). */
+const CLEARLY = { short: 4, long: 7 }
+/** Nights cut holds at lengths alike, too: beyond this more is asked. */
+const LONG_SECONDS = 4 * 3600
 /** Weather stretches and shortens holds that are seen only by their length, the longer the more. */
 const WIDEN = { relative: 0.03, perHour: 0.012 }
 /** A bound rests on single holds: taken down by what a cool night may have added. */
@@ -29,9 +31,14 @@ export function holdTimeFromLengths(input: HoldTimeInput): HoldTimeEstimate | nu
   if (holds.length < FEWEST_HOLDS) return null
   const profile = profileOf(holds)
   const hours = profile.seconds / 3600
+  const isLong = profile.seconds > LONG_SECONDS
+  const clearly = isLong ? CLEARLY.long : CLEARLY.short
+  const fewest = isLong ? FEWEST_NEAR.long : FEWEST_NEAR.short
   const widening = WIDEN.relative + WIDEN.perHour * hours
   const edges = holds.reduce((sum, hold) => sum + hold.edgeSeconds, 0) / holds.length
-  if (profile.near < FEWEST_NEAR || profile.overPlateau < CLEARLY) return boundOf(input, holds)
+  if (profile.near < fewest || profile.overPlateau < clearly || isOutlasted(profile.seconds, holds)) {
+    return boundOf(input, holds)
+  }
   const logSigma = Math.hypot(profile.logSigma, widening / Z95, edges / profile.seconds / 4)
   const low =
     Math.min(profile.low, profile.seconds) *
@@ -44,6 +51,11 @@ export function holdTimeFromLengths(input: HoldTimeInput): HoldTimeEstimate | nu
     near: Math.round(profile.near),
     logSigma,
   })
+}
+
+/** Three holds that went on a quarter longer speak against an estimate. */
+function isOutlasted(seconds: number, holds: readonly LabelledHold[]): boolean {
+  return holds.filter((hold) => hold.seconds > 1.25 * seconds).length >= 3
 }
 
 function boundOf(input: HoldTimeInput, holds: readonly LabelledHold[]): HoldTimeEstimate | null {

@@ -16,6 +16,8 @@ export interface LabelledHold {
 
 /** Leak runs refill one differential and are alike: this far apart in the logarithm of their length. */
 const ALIKE = 0.05
+/** Share of the lengths within 18 % that lie within 6 % of a cluster that is one (a broad heap has 0.4). */
+const TIGHT = 0.58
 
 /**
  * Holds since `from`, newest first and at most `most`, with the odds that the leak or a flush ended each: from
@@ -97,7 +99,12 @@ function tightCluster(sorted: readonly number[]): number | null {
     }
   })
   const found = best as { count: number; centre: number } | null // written within the closure above
-  return found === null || found.count < Math.max(3, 0.04 * sorted.length) ? null : found.centre
+  if (found === null || found.count < Math.max(3, 0.04 * sorted.length)) return null
+  // Flush runs start lower and are longer, and scatter: the leak's cluster is tight, and hardly any is shorter.
+  const within = (reach: number) => sorted.filter((log) => Math.abs(log - found.centre) < reach).length
+  const shorter = sorted.filter((log) => log < found.centre - 3 * ALIKE).length
+  if (shorter > Math.max(1, 0.06 * sorted.length)) return null
+  return within(1.2 * ALIKE) < TIGHT * within(3.6 * ALIKE) ? null : found.centre
 }
 
 /** Flushes an hour by hour of the UTC day from the holds that seem to have been cut, smoothed over neighbours. */

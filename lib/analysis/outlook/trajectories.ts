@@ -26,6 +26,8 @@ export interface Tally {
   nextRuns: Instant[]
 }
 
+/** What barometer and air may do beside yesterday's curve, Pa/h either way (judged from simulated weather). */
+const WEATHER_SIGMA_PA_PER_HOUR = 38
 /** Switch scatter and small weather from hold to hold (judged). */
 const HOLD_SCATTER = 0.025
 
@@ -79,6 +81,7 @@ function playOnce(
   const { stepSeconds, weather, flushesPerHour } = course
   const stretch = holdSeconds / scale.holdSeconds
   const paPerSecond = scale.ratePaPerSecond === null ? null : scale.ratePaPerSecond / stretch
+  const drift = (WEATHER_SIGMA_PA_PER_HOUR * normalDraw(random)) / 3600
   let phase = (start.phaseSeconds + start.sigmaSeconds * normalDraw(random)) * stretch
   let hold = holdSeconds * Math.exp(HOLD_SCATTER * normalDraw(random))
   let runs = 0
@@ -86,7 +89,7 @@ function playOnce(
   let next: Instant | null = null
   for (let k = 0; k < weather.length; k += 1) {
     const at = course.from + k * stepSeconds * 1000
-    const pace = paPerSecond === null ? 1 : Math.max(-0.5, 1 + (weather[k] ?? 0) / paPerSecond)
+    const pace = paPerSecond === null ? 1 : Math.max(-0.5, 1 + ((weather[k] ?? 0) + drift) / paPerSecond)
     const flushAt = aboard ? drawFlush(flushesPerHour[k] ?? 0, stepSeconds, random) : null
     const until = flushAt ?? stepSeconds
     let elapsed = 0
