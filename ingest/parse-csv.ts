@@ -29,7 +29,9 @@ export function parseCsv(body: string): RecordColumns {
   return columns
 }
 
-function readTable(body: string): string[][] {
+/** The cells of a table (RFC 4180 section 2), row by row; blank lines left out.
+ * @throws Problem `not-parseable` with the line */
+export function readTable(body: string): string[][] {
   try {
     return parse(body, {
       bom: true,

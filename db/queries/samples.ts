@@ -165,24 +165,25 @@ export async function deleteSamplesOf(
 
 /** Makes the hourly extremes of these hours (epoch milliseconds of their starts) anew from the samples. */
 export async function rollUpHours(trx: Trx, loggerId: string, hoursMs: number[]): Promise<void> {
-  const first = hoursMs[0]
-  const last = hoursMs.at(-1)
-  if (first === undefined || last === undefined) return
+  if (hoursMs.length === 0) return
   const hours = arrayLiteral(hoursMs.map(instant))
   await trx.raw('delete from sample_hour where logger_id = ? and hour = any (?::timestamptz[])', [
     loggerId,
     hours,
   ])
-  // Summed as numeric: a sum of floats would depend on the order the samples came in.
+  // An hour at a time by the key, whatever the planner thinks of freshly loaded months; summed in the order of
+  // time, since a sum of floats depends on its order.
   await trx.raw(
     `insert into sample_hour
-     select s.logger_id, h.hour, count(*), min(s.vacuum_pa), max(s.vacuum_pa), avg(s.vacuum_pa::numeric),
-       min(s.air_c), max(s.air_c), avg(s.air_c::numeric), min(s.supply_v), max(s.supply_v), avg(s.supply_v::numeric)
+     select ?::integer, h.hour, s.*
      from unnest(?::timestamptz[]) as h (hour)
-     join sample s on s.logger_id = ? and s.at >= h.hour and s.at < h.hour + interval '1 hour'
-       and s.at >= ? and s.at < ?
-     group by s.logger_id, h.hour`,
-    [hours, loggerId, instant(first), instant(last + 3_600_000)],
+     cross join lateral (
+       select count(*) as samples, min(vacuum_pa), max(vacuum_pa), avg(vacuum_pa), min(air_c), max(air_c), avg(air_c),
+         min(supply_v), max(supply_v), avg(supply_v)
+       from (select vacuum_pa, air_c, supply_v from sample
+             where logger_id = ? and at >= h.hour and at < h.hour + interval '1 hour' order by at) o) s
+     where s.samples > 0`,
+    [loggerId, hours, loggerId],
   )
 }
 

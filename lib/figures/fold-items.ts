@@ -5,7 +5,9 @@ import type { FoldItem, Instant, Sample } from '@/lib/analysis/fold/types'
 import { factItems } from '@/lib/figures/facts'
 
 /** Samples read at once: a year of a quick logger is never in memory as a whole. */
-export const PAGE_SAMPLES = 10_000
+const PAGE_SAMPLES = 10_000
+/** The first page is short: most folds take one sample on, or end at the next checkpoint. */
+const FIRST_PAGE_SAMPLES = 2_000
 
 /**
  * The items of a system's fold with times in (afterMs, throughMs], page by page: its loggers' samples as stored,
@@ -21,13 +23,14 @@ export async function* foldItems(
 ): AsyncGenerator<FoldItem[]> {
   const facts = factItems(stored).filter((item) => item.fact.at > afterMs)
   let nextFact = 0
+  let pageSize = FIRST_PAGE_SAMPLES
   for (const fitting of stored.fittings) {
     const correct = corrector(stored, fitting.loggerId)
     const span = { beforeMs: Math.ceil(fitting.toMs), lastMs: throughMs }
     let fromMs = Math.max(Math.ceil(fitting.fromMs), afterMs + 1)
     for (;;) {
       if (fromMs > throughMs || fromMs >= fitting.toMs) break
-      const rows = await pageOfSamples(trx, fitting.loggerId, { ...span, fromMs }, PAGE_SAMPLES)
+      const rows = await pageOfSamples(trx, fitting.loggerId, { ...span, fromMs }, pageSize)
       const items: FoldItem[] = []
       for (const row of rows) {
         let fact = facts[nextFact]
@@ -40,7 +43,8 @@ export async function* foldItems(
         fromMs = row[0] + 1
       }
       if (items.length > 0) yield items
-      if (rows.length < PAGE_SAMPLES) break
+      if (rows.length < pageSize) break
+      pageSize = PAGE_SAMPLES
     }
   }
 }
