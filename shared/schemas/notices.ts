@@ -71,8 +71,9 @@ export const snoozeSchema = z.object({ snoozedUntil: instantSchema.nullable() })
 /** GET /api/messages (manager) */
 export const messageSchema = z.object({
   id: idSchema,
-  personId: idSchema,
-  personName: z.string(),
+  /** Null for somebody invited who has no account yet. */
+  personId: idSchema.nullable(),
+  personName: z.string().nullable(),
   channel: messageChannelSchema,
   to: z.string(),
   subject: z.string().nullable(),
