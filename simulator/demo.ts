@@ -20,6 +20,7 @@ export type DemoOptions = {
   /** Where it remembers how far it has come; null forgets. */
   stateFile: string | null
   signal: AbortSignal
+  cutOff: AbortSignal
   log: (line: string) => void
 }
 
@@ -60,6 +61,7 @@ export async function runDemo(options: DemoOptions): Promise<void> {
         key: progress.key,
         serial: system.logger.serial,
         signal,
+        cutOff: options.cutOff,
         onRetry: (reason: string, waitMs: number) => {
           if (waitMs >= 4000) log(`${vessel.name}: ${reason}, trying again in ${Math.round(waitMs / 1000)} s`)
         },

@@ -22,6 +22,7 @@ export type FleetOptions = {
   once: boolean
   batchSeconds: number
   signal: AbortSignal
+  cutOff: AbortSignal
   log: (line: string) => void
 }
 
@@ -47,7 +48,11 @@ export async function runFleet(options: FleetOptions): Promise<void> {
     if (!system || systemId === undefined) return
     const { key } = await registerLogger(manager, systemId, system.logger, from)
     loggers.push(
-      loggerOf(boat, { url, key, serial: system.logger.serial, signal }, { postedTo: from, state: null }),
+      loggerOf(
+        boat,
+        { url, key, serial: system.logger.serial, signal, cutOff: options.cutOff },
+        { postedTo: from, state: null },
+      ),
     )
     if (loggers.length % 50 === 0) log(`${loggers.length} of ${options.vessels} vessels created`)
   })

@@ -52,6 +52,21 @@ function numberOf(text: string | undefined, fallback: number, name: string): num
   return value
 }
 
+const GRACE_MS = 3000
+
+/** The first signal ends everything between two uploads; what is still in hand three seconds later is cut. */
+function untilToldToEnd(): { signal: AbortSignal; cutOff: AbortSignal } {
+  const ending = new AbortController()
+  const cutting = new AbortController()
+  const end = (): void => {
+    ending.abort()
+    setTimeout(() => cutting.abort(), GRACE_MS).unref()
+  }
+  process.once('SIGTERM', end)
+  process.once('SIGINT', end)
+  return { signal: ending.signal, cutOff: cutting.signal }
+}
+
 async function main(): Promise<void> {
   const { values } = parseArgs({ options, allowPositionals: false })
   const chosen = [values.demo, values.vessels, values.key].filter((each) => each !== undefined)
@@ -60,10 +75,7 @@ async function main(): Promise<void> {
     process.exitCode = values.help ? 0 : 2
     return
   }
-  const ending = new AbortController()
-  process.once('SIGTERM', () => ending.abort())
-  process.once('SIGINT', () => ending.abort())
-  const { signal } = ending
+  const { signal, cutOff } = untilToldToEnd()
   const log = (line: string): void => console.log(line)
   const url = values.url ?? process.env.APP_URL ?? 'http://127.0.0.1:3000'
   const password = values.password ?? process.env.DEMO_PASSWORD ?? 'middle-watch-demo'
@@ -72,6 +84,7 @@ async function main(): Promise<void> {
     once: values.once ?? false,
     batchSeconds: Math.max(1, numberOf(values.batch, 30, 'batch')),
     signal,
+    cutOff,
     log,
   }
   const logger = LOGGERS.find((each) => each === (values.logger ?? 'both'))
@@ -85,7 +98,14 @@ async function main(): Promise<void> {
 
   try {
     if (values.demo) {
-      await runDemo({ url, password, stateFile: values.state ?? process.env.SIM_STATE ?? null, signal, log })
+      await runDemo({
+        url,
+        password,
+        stateFile: values.state ?? process.env.SIM_STATE ?? null,
+        signal,
+        cutOff,
+        log,
+      })
     } else if (values.vessels !== undefined) {
       const email = values.email ?? 'manager@saltern.example'
       const vessels = numberOf(values.vessels, 1, 'vessels')
@@ -101,7 +121,7 @@ async function main(): Promise<void> {
       })
     } else {
       const from = Date.now() - numberOf(values.days, 0, 'days') * 86_400_000
-      const target = { url, key: values.key ?? '', serial: values.serial ?? `MW-${seed}`, signal }
+      const target = { url, key: values.key ?? '', serial: values.serial ?? `MW-${seed}`, signal, cutOff }
       await postAll([loggerOf(randomBoat(seed, kind), target, { postedTo: from, state: null })], from, pace)
     }
   } catch (error) {

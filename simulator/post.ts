@@ -15,7 +15,10 @@ export type UploadTarget = {
   url: string
   key: string
   serial: string
+  /** Ends waiting and starts nothing more; an upload in hand is finished. */
   signal?: AbortSignal
+  /** Cuts an upload in hand too. */
+  cutOff?: AbortSignal
   /** Waits between attempts; replaced in tests. */
   wait?: (ms: number, signal?: AbortSignal) => Promise<unknown>
   maxAttempts?: number
@@ -92,7 +95,7 @@ async function attemptUpload(
       method: 'POST',
       headers,
       body: new Uint8Array(body),
-      signal: target.signal ? AbortSignal.any([target.signal, timeout]) : timeout,
+      signal: target.cutOff ? AbortSignal.any([target.cutOff, timeout]) : timeout,
     })
     text = await response.text()
   } catch (error) {
