@@ -85,7 +85,7 @@ function searchWeights(state: NextTestState): Search | null {
   if (top.probability < DECIDED) return { weights: probabilities, second: false }
   if (sum(top.group, (key) => shares.get(key)?.share ?? 0) >= EXPLAINED) return null
   const scale = flowScale(state.readings)
-  const open = state.shares.filter((share) => share.high - share.low > KNOWN_WITHIN * scale)
+  const open = state.shares.filter((share) => (share.high ?? Infinity) - share.low > KNOWN_WITHIN * scale)
   const total = open.reduce((all, share) => all + share.flowPaM3PerS, 0)
   if (!(total > 0)) return null
   return { weights: new Map(open.map((share) => [share.key, share.flowPaM3PerS / total])), second: true }

@@ -14,7 +14,11 @@ export function flowScale(readings: readonly Reading[]): number {
   return readings.reduce((most, reading) => Math.max(most, reading.flow, reading.sigma), 0)
 }
 
-type System = { groups: string[][]; rows: number[][]; target: number[] }
+/** Beyond so many times the largest flow read, a flow counts as unbounded. */
+const UNBOUNDED = 1e3
+
+/** The tests come first among the rows, the pull towards the prior after them. */
+type System = { groups: string[][]; rows: number[][]; target: number[]; tests: number }
 
 function buildSystem(readings: readonly Reading[], priors: ReadonlyMap<string, number>): System {
   const groups = groupBySets(
@@ -34,18 +38,23 @@ function buildSystem(readings: readonly Reading[], priors: ReadonlyMap<string, n
     rows.push([...groups, ...bounds].map((_, other) => (other === index ? pull : 0)))
     target.push(pull * scale * priorOf(group, priors))
   })
-  return { groups, rows, target }
+  return { groups, rows, target, tests: readings.length }
 }
 
 const priorOf = (group: readonly string[], priors: ReadonlyMap<string, number>) =>
   group.reduce((sum, key) => sum + (priors.get(key) ?? 0), 0)
 
+const testsOnly = (system: System): System => ({
+  ...system,
+  rows: system.rows.slice(0, system.tests),
+  target: system.target.slice(0, system.tests),
+})
+
 /** Misfit of the tests to any set of leaks at all: χ² of the best non-negative flows. */
 export function misfit(readings: readonly Reading[], priors: ReadonlyMap<string, number>): number {
   if (readings.length === 0) return 0
-  const { rows, target } = buildSystem(readings, priors)
-  const fit = nonNegativeLeastSquares(rows, target)
-  return fit.residualNorm ** 2
+  const system = testsOnly(buildSystem(readings, priors))
+  return nonNegativeLeastSquares(system.rows, system.target).residualNorm ** 2
 }
 
 /**
@@ -63,11 +72,12 @@ export function leakShares(
   const fit = nonNegativeLeastSquares(system.rows, system.target)
   const flows = system.groups.map((_, index) => fit.x[index] ?? 0)
   const total = flows.reduce((sum, flow) => sum + flow, 0)
-  const allowed = fit.residualNorm ** 2 + CHI_SQUARED_95
+  const tests = testsOnly(system)
+  const allowed = nonNegativeLeastSquares(tests.rows, tests.target).residualNorm ** 2 + CHI_SQUARED_95
   return system.groups.flatMap((group, index) => {
     const flow = flows[index] ?? 0
     const [low, high] = withIntervals
-      ? intervalOf(system, index, flow, allowed, flowScale(readings))
+      ? intervalOf(tests, index, flow, allowed, flowScale(readings))
       : [flow, flow]
     return group.map((key) => {
       const part = (priors.get(key) ?? 0) / priorOf(group, priors)
@@ -91,16 +101,19 @@ function heldMisfit(system: System, index: number, value: number): number {
 }
 
 function intervalOf(
-  system: System,
+  tests: System,
   index: number,
   flow: number,
   allowed: number,
   scale: number,
-): [number, number] {
-  const fits = (value: number) => heldMisfit(system, index, value) <= allowed
+): [number, number | null] {
+  const fits = (value: number) => heldMisfit(tests, index, value) <= allowed
   const low = fits(0) ? 0 : edge(flow, 0, fits)
   let beyond = flow + scale
-  while (fits(beyond) && beyond < 1e3 * scale) beyond = flow + 2 * (beyond - flow)
+  while (fits(beyond)) {
+    beyond = flow + 2 * (beyond - flow)
+    if (beyond > UNBOUNDED * scale) return [low, null]
+  }
   return [low, edge(flow, beyond, fits)]
 }
 

@@ -38,8 +38,11 @@ export type IsolationInput = {
   gaugeResolutionPa?: number
 }
 
-/** Leak flow of a part with its 95 % interval, Pa·m³/s; `high` is the bound of a part that is cleared. */
-export type Share = { key: string; flowPaM3PerS: number; low: number; high: number; share: number }
+/**
+ * Leak flow of a part with its 95 % interval, Pa·m³/s; `high` is the bound of a part that is cleared, null
+ * where nothing bounds it.
+ */
+export type Share = { key: string; flowPaM3PerS: number; low: number; high: number | null; share: number }
 export type Suspect = { key: string; probability: number }
 export type Contradiction = { tests: number[]; repeat: number }
 export type NextTest = {

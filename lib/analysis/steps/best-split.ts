@@ -21,8 +21,7 @@ export function levelOf(legs: readonly WeighedLeg[]): Level {
 
 /**
  * The split into two levels with the largest likelihood ratio, at least two legs on each side; z is the
- * difference of the levels over its standard error, widened where legs resemble their neighbours (a warm
- * afternoon is one thing, not five). Null for fewer than four legs.
+ * difference of the levels over its standard error. Null for fewer than four legs.
  */
 export function bestSplit(legs: readonly WeighedLeg[]): Split | null {
   let best = { at: 0, gain: -1 }
@@ -42,18 +41,27 @@ export function bestSplit(legs: readonly WeighedLeg[]): Split | null {
   return best.at === 0 ? null : splitAt(legs, best.at)
 }
 
-/** A split at a given leg, with its z. */
+/** A split at a given leg; z as if all legs were independent. */
 export function splitAt(legs: readonly WeighedLeg[], at: number): Split {
   const before = levelOf(legs.slice(0, at))
   const after = levelOf(legs.slice(at))
+  return {
+    at,
+    before,
+    after,
+    z: (after.value - before.value) / Math.sqrt(1 / before.weight + 1 / after.weight),
+  }
+}
+
+/** The same split with z widened where legs resemble their neighbours: a warm afternoon is one thing, not five. */
+export function widen(split: Split, legs: readonly WeighedLeg[]): Split {
   const rest = legs.map(
-    (leg, index) => (leg.value - (index < at ? before : after).value) * Math.sqrt(leg.weight),
+    (leg, index) =>
+      (leg.value - (index < split.at ? split.before : split.after).value) * Math.sqrt(leg.weight),
   )
   const memory =
     legs.length < 6 ? 0 : Math.min(STRONGEST_MEMORY, Math.max(0, lagOneAutocorrelation(rest) ?? 0))
-  const widened = (1 + memory) / (1 - memory)
-  const variance = widened * (1 / before.weight + 1 / after.weight)
-  return { at, before, after, z: (after.value - before.value) / Math.sqrt(variance) }
+  return { ...split, z: split.z / Math.sqrt((1 + memory) / (1 - memory)) }
 }
 
 /** Scatter about a straight line in time: what a slow change would leave. */

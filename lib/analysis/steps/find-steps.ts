@@ -1,4 +1,4 @@
-import { bestSplit, levelOf, lineChiSquared, splitAt } from './best-split'
+import { bestSplit, levelOf, lineChiSquared, type Split, splitAt, widen } from './best-split'
 import { type LegRate, weighLegs, type WeighedLeg } from './leg-noise'
 import { localise } from './localise'
 
@@ -28,13 +28,16 @@ export function findSteps(legs: readonly LegRate[]): Step[] {
     .filter((leg) => Number.isFinite(leg.paPerHour) && leg.sigmaPaPerHour > 0 && leg.endedAt > leg.startedAt)
     .sort((a, b) => a.startedAt - b.startedAt)
   const weighed = weighLegs(known)
-  return describe(weighed, keepStrong(weighed, cutsIn(weighed, 0)))
+  return describe(weighed, keepSteps(weighed, cutsIn(weighed, 0)))
 }
 
-/** Indices at which a new level begins, by recursion on each side of the best split. */
+/**
+ * Indices at which a new level may begin, by recursion on each side of the best split: more than there are,
+ * since a leak that came and went looks slow until both its ends are cut.
+ */
 function cutsIn(legs: readonly WeighedLeg[], offset: number): number[] {
   const split = bestSplit(legs)
-  if (split === null || !isStep(legs, split)) return []
+  if (split === null || Math.abs(split.z) <= STRONG) return []
   return [
     ...cutsIn(legs.slice(0, split.at), offset),
     offset + split.at,
@@ -42,47 +45,40 @@ function cutsIn(legs: readonly WeighedLeg[], offset: number): number[] {
   ]
 }
 
-type Levels = Pick<NonNullable<ReturnType<typeof bestSplit>>, 'before' | 'after' | 'z' | 'at'>
-
-function isStep(legs: readonly WeighedLeg[], split: Levels): boolean {
-  if (!isStrong(legs, split)) return false
-  const left = split.before.chiSquared + split.after.chiSquared
-  return lineChiSquared(legs) > left + BETTER_THAN_LINE
+/** Drops cuts that are no steps between the levels beside them, the weakest first. */
+function keepSteps(legs: readonly WeighedLeg[], cuts: readonly number[]): number[] {
+  let kept = cuts.slice()
+  for (;;) {
+    const judged = kept.map((cut, index) => {
+      const from = kept[index - 1] ?? 0
+      const part = legs.slice(from, kept[index + 1] ?? legs.length)
+      const split = widen(splitAt(part, cut - from), part)
+      return { cut, isStep: isStep(part, split), z: Math.abs(split.z) }
+    })
+    const weakest = judged.filter((item) => !item.isStep).sort((a, b) => a.z - b.z)[0]
+    if (weakest === undefined) return kept
+    kept = kept.filter((cut) => cut !== weakest.cut)
+  }
 }
 
-function isStrong(legs: readonly WeighedLeg[], { before, after, z, at }: Levels): boolean {
+function isStep(legs: readonly WeighedLeg[], { before, after, z, at }: Split): boolean {
   const noise = 1 / Math.sqrt(Math.min(before.weight, after.weight))
   const small = Math.max(noise, Math.min(Math.abs(before.value), Math.abs(after.value)))
   const large = Math.max(Math.abs(before.value), Math.abs(after.value))
   if (Math.abs(z) <= STRONG || large < LEAST_RATIO * small) return false
   // A side of few legs must have all of them beyond the middle, or one odd leg would be a step.
   const middle = (before.value + after.value) / 2
-  const beyond = (leg: WeighedLeg, level: number) => (leg.value - middle) * (level - middle) > 0
   const agrees = (side: readonly WeighedLeg[], level: number) =>
-    side.length > 4 || side.every((leg) => beyond(leg, level))
-  return agrees(legs.slice(0, at), before.value) && agrees(legs.slice(at), after.value)
-}
-
-/** Drops cuts that are not strong between their final neighbours, the weakest first. */
-function keepStrong(legs: readonly WeighedLeg[], cuts: readonly number[]): number[] {
-  let kept = cuts.slice()
-  for (;;) {
-    const judged = kept.map((cut, index) => {
-      const part = legs.slice(kept[index - 1] ?? 0, kept[index + 1] ?? legs.length)
-      const split = splitAt(part, cut - (kept[index - 1] ?? 0))
-      return { cut, strong: isStrong(part, split), z: Math.abs(split.z) }
-    })
-    const weakest = judged.filter((item) => !item.strong).sort((a, b) => a.z - b.z)[0]
-    if (weakest === undefined) return kept
-    kept = kept.filter((cut) => cut !== weakest.cut)
-  }
+    side.length > 4 || side.every((leg) => (leg.value - middle) * (level - middle) > 0)
+  if (!agrees(legs.slice(0, at), before.value) || !agrees(legs.slice(at), after.value)) return false
+  return lineChiSquared(legs) > before.chiSquared + after.chiSquared + BETTER_THAN_LINE
 }
 
 function describe(legs: readonly WeighedLeg[], cuts: readonly number[]): Step[] {
   return cuts.map((cut, index) => {
     const from = cuts[index - 1] ?? 0
     const part = legs.slice(from, cuts[index + 1] ?? legs.length)
-    const split = splitAt(part, cut - from)
+    const split = widen(splitAt(part, cut - from), part)
     return {
       between: localise(part, split),
       fromPaPerHour: levelOf(part.slice(0, split.at)).value,

@@ -31,9 +31,12 @@ export function weighLegs(legs: readonly LegRate[]): WeighedLeg[] {
 function localLevel(legs: readonly LegRate[], index: number): number {
   const rates = (from: number, to: number) => legs.slice(Math.max(0, from), to).map((leg) => leg.paPerHour)
   const own = legs[index]?.paPerHour ?? 0
-  const sides = [rates(index - NEIGHBOURS, index + 1), rates(index, index + NEIGHBOURS + 1)]
-    .filter((side) => side.length > 1)
-    .map((side) => median(side) ?? own)
+  const before = rates(index - NEIGHBOURS, index + 1)
+  const after = rates(index, index + NEIGHBOURS + 1)
+  const sides = [before, after].filter((side) => side.length > 1).map((side) => median(side) ?? own)
+  // The last leg, or the first, has a side of its own only with its one neighbour.
+  if (after.length < 2) sides.push(median(rates(index - 1, index + 1)) ?? own)
+  if (before.length < 2) sides.push(median(rates(index, index + 2)) ?? own)
   const nearest = sides.sort((a, b) => Math.abs(a - own) - Math.abs(b - own))[0]
   return Math.abs(nearest ?? own)
 }

@@ -1,10 +1,10 @@
-import { mannKendall, median, theilSen } from '@/lib/analysis/statistics'
+import { mannKendall, median, medianAbsoluteDeviation, type Point, theilSen } from '@/lib/analysis/statistics'
 
 /** Leak rate of one day; `at` is its middle, epoch milliseconds. */
 export type DailyRate = { at: number; paPerHour: number }
 
-/** When the fitted rate crosses the limit, epoch milliseconds; null where an end is beyond sight. */
-export type LimitCrossing = { at: number; low: number | null; high: number | null }
+/** When the fitted rate crosses the limit, epoch milliseconds; `high` is null beyond sight. */
+export type LimitCrossing = { at: number; low: number; high: number | null }
 
 export type RateTrend = {
   /** Of ln(rate), a day; 0.01 is one per cent a day. */
@@ -26,6 +26,8 @@ const FEWEST_DAYS = 5
 const SIGNIFICANT = 0.05
 /** Nothing further off than this is foretold. */
 const SIGHT_DAYS = 730
+/** Standard error of a median of normal values over that of their mean. */
+const MEDIAN_ERROR = 1.2533
 
 /**
  * Trend of the leak rate over weeks: Theil–Sen slope of its logarithm with Gilbert's interval, Mann–Kendall
@@ -47,10 +49,6 @@ export function rateTrend(daily: readonly DailyRate[], limitPaPerHour: number | 
   const pValue = mannKendall(points)?.pValue ?? 1
   const { slope, low, high } = line
   const isTrend = pValue < SIGNIFICANT && low !== null && high !== null && low * high > 0
-  const pivot = {
-    x: median(points.map((point) => point.x)) ?? 0,
-    y: median(points.map((point) => point.y)) ?? 0,
-  }
   return {
     slopePerDay: slope,
     low,
@@ -58,37 +56,40 @@ export function rateTrend(daily: readonly DailyRate[], limitPaPerHour: number | 
     pValue,
     isTrend,
     doublingDays: isTrend ? Math.LN2 / slope : null,
-    limitCrossing:
-      isTrend && limitPaPerHour !== null ? crossing(line, pivot, limitPaPerHour, points, origin) : null,
+    limitCrossing: isTrend && limitPaPerHour !== null ? crossing(line, limitPaPerHour, points, origin) : null,
     days: points.length,
   }
 }
 
-/** Where the line through the middle of the record meets the limit, and where its steepest and flattest do. */
+/**
+ * Where the line through the middle of the record meets the limit. The interval takes the doubt of the slope
+ * (its own interval) and of the middle (the scatter of days about the line) together.
+ */
 function crossing(
   line: { slope: number; low: number | null; high: number | null },
-  pivot: { x: number; y: number },
   limitPaPerHour: number,
-  points: readonly { x: number }[],
+  points: readonly Point[],
   origin: number,
 ): LimitCrossing | null {
   if (!(line.slope > 0) || !(limitPaPerHour > 0)) return null
+  const rests = points.map((point) => point.y - line.slope * point.x)
+  const middleDay = median(points.map((point) => point.x)) ?? 0
+  const middleLog = (median(rests) ?? 0) + line.slope * middleDay
   const firstDay = Math.min(...points.map((point) => point.x))
-  const lastDay = Math.max(...points.map((point) => point.x))
-  const dayAt = (slope: number) => pivot.x + (Math.log(limitPaPerHour) - pivot.y) / slope
+  const horizon = Math.max(...points.map((point) => point.x)) + SIGHT_DAYS
+  const dayAt = (slope: number) => middleDay + (Math.log(limitPaPerHour) - middleLog) / slope
   const day = dayAt(line.slope)
   // Over the limit since before the record began: nothing is crossed that could be dated.
-  if (day < firstDay || day > lastDay + SIGHT_DAYS) return null
-  const ends = [line.low, line.high].map((slope) => (slope !== null && slope > 0 ? dayAt(slope) : null))
-  const inSight = ends.map((end) =>
-    end === null || end > lastDay + SIGHT_DAYS ? null : origin + end * DAY_MS,
-  )
-  const [a, b] = inSight
-  const at = origin + day * DAY_MS
-  const known = [a, b].filter((end): end is number => typeof end === 'number')
+  if (day < firstDay || day > horizon) return null
+  const scatter = medianAbsoluteDeviation(rests) ?? 0
+  const middleDays = (1.96 * MEDIAN_ERROR * scatter) / Math.sqrt(points.length) / line.slope
+  const ends = [line.low, line.high].flatMap((slope) => (slope !== null && slope > 0 ? [dayAt(slope)] : []))
+  const earlier = Math.max(0, ...ends.map((end) => day - end))
+  const later = ends.length < 2 ? null : Math.max(0, ...ends.map((end) => end - day))
+  const high = later === null ? null : day + Math.hypot(later, middleDays)
   return {
-    at,
-    low: known.length === 0 ? null : Math.min(at, ...known),
-    high: known.length < 2 ? null : Math.max(at, ...known),
+    at: origin + day * DAY_MS,
+    low: origin + (day - Math.hypot(earlier, middleDays)) * DAY_MS,
+    high: high === null || high > horizon ? null : origin + high * DAY_MS,
   }
 }
