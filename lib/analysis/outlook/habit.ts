@@ -1,5 +1,6 @@
 import { labelHolds } from '../hold-time'
 import type { Instant } from '../fold/types'
+import { dropSpread, type DropSpread } from './drops'
 import { eveningOf, localHour } from './local-time'
 import type { OutlookInput } from './types'
 
@@ -10,12 +11,15 @@ export interface FlushEvent {
   at: Instant
   /** How far it drew the vacuum down, Pa; null where nothing measures it: it starts the pump. */
   dropPa: number | null
+  /** Whether the pump started: then sparse samples missed the bottom, and the drop is the least it was. */
+  startedPump: boolean
 }
 
 export interface Habit {
   /** Flushes an hour by hour of the boat's day, on days with people aboard. */
   perHour: readonly number[]
-  drops: readonly (number | null)[]
+  /** Null: every flush is taken to start the pump. */
+  drops: DropSpread | null
   /** Share of the last evenings with people aboard; one half with nothing to go by. */
   aboardShare: number
 }
@@ -30,7 +34,7 @@ export function flushEvents(
   if (input.seesFlushes) return input.flushes.filter((flush) => flush.at <= input.at)
   return labelHolds(input, input.at - 14 * DAY_MS, 400)
     .filter((hold) => hold.ifFlush > hold.ifLeak)
-    .map((hold) => ({ at: hold.endedAt, dropPa: null }))
+    .map((hold) => ({ at: hold.endedAt, dropPa: null, startedPump: true }))
 }
 
 /**
@@ -57,7 +61,7 @@ export function habitOf(input: OutlookInput, events: readonly FlushEvent[]): Hab
   })
   return {
     perHour: recent.length === 0 ? counts : perHour,
-    drops: recent.length === 0 ? [null] : recent.map((event) => event.dropPa),
+    drops: dropSpread(recent),
     aboardShare: recent.length === 0 ? 0.5 : Math.min(1, daysAboard / Math.max(1, Math.round(days))),
   }
 }

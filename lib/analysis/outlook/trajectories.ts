@@ -123,12 +123,12 @@ function afterFlush(
   phase: number,
   stretch: number,
   hold: number,
-  habit: Habit,
+  { drops }: Habit,
   random: Random,
 ): number {
-  const dropPa = habit.drops[Math.floor(random() * habit.drops.length)] ?? null
-  if (dropPa === null || scale.vacuumAt === null || scale.ofVacuum === null) return 0
-  const vacuumPa = scale.vacuumAt(phase / stretch) - dropPa
-  const after = scale.ofVacuum(vacuumPa) * stretch
+  if (drops === null || scale.vacuumAt === null || scale.ofVacuum === null) return 0
+  const vacuumPa = scale.vacuumAt(phase / stretch)
+  const after =
+    scale.ofVacuum(vacuumPa - Math.exp(drops.logMean + drops.logSigma * normalDraw(random))) * stretch
   return after >= hold ? 0 : after
 }
