@@ -53,6 +53,7 @@ export async function runDemo(options: DemoOptions): Promise<void> {
     const made = await setUp(vessel)
     const startedAt = Date.now()
     let taken = 0
+    let isLive = false
     const loggers = vessel.systems.flatMap((system, index) => {
       const progress = made.systems[index]
       if (!progress) return []
@@ -71,6 +72,7 @@ export async function runDemo(options: DemoOptions): Promise<void> {
     const report = {
       onUpload: ({ samples }: { samples: { received: number } }) => {
         taken += samples.received
+        if (isLive && samples.received > 1000) log(`${vessel.name}: back with ${samples.received} samples`)
       },
       onRefused: (error: Error) => log(`${vessel.name}: ${error.message}`),
       onStop: (reason: string) => log(`${vessel.name}: no longer posting, ${reason}`),
@@ -79,6 +81,7 @@ export async function runDemo(options: DemoOptions): Promise<void> {
     log(
       `${vessel.name}: ${taken} samples in ${((Date.now() - startedAt) / 1000).toFixed(1)} s (${vessel.story})`,
     )
+    isLive = true
     for (const logger of loggers) {
       live.push(keepPosting(logger, paceClock(Date.now(), 1), BATCH_SECONDS, signal, report))
     }
