@@ -34,7 +34,7 @@ export const PUMP_LOST_MS = 24 * HOUR
 export const PUMP_AWAITED_MS = HOUR
 
 /** Bins of a leg: at most so many, the narrowest so wide. Fewer than 120 keeps the state under 8 kB. */
-export const MAX_BINS = 96
+export const MAX_BINS = 88
 export const FIRST_BIN_SECONDS = 15
 /** Dropped after a stop or a flush, while the gas settles; twice that after a deep recharge. */
 export const SETTLING_SECONDS = 90

@@ -31,6 +31,8 @@ function fitLogger(state: FoldState, fact: Extract<Fact, { kind: 'fitting' }>, r
     state.channels.pumpAt = null
     state.sigmaPa = 0.005 * INHG
     state.stepPa = 0
+    state.rhythmAt = null
+    state.recordsEdges = false
   }
   state.fitting = {
     loggerId: fact.loggerId,

@@ -60,7 +60,8 @@ export function openHold(
 /** Whether vacuum has been heard lately or is expected: without it nothing about levels can be told. */
 export function readsVacuum(state: FoldState): boolean {
   const { vacuumAt } = state.channels
-  return vacuumAt !== null && (state.at ?? 0) - vacuumAt <= HOUR
+  if (vacuumAt === null) return state.fitting?.vacuum === true
+  return (state.at ?? 0) - vacuumAt <= HOUR
 }
 
 /** Vacuum under which a pump that does not start is off. */
@@ -72,24 +73,29 @@ export function offLinePa(state: FoldState): number {
 export function holdSample(state: FoldState, at: Instant, vacuumPa: number, rows: Row[]): void {
   const { hold } = state
   if (hold === null) return
-  if (state.fall !== null) {
-    if (cameBack(state.fall, vacuumPa)) {
-      pointFault(state.fall, at, rows)
-      state.fall = null
-    } else if (stillFalling(state, state.fall, at, vacuumPa)) {
-      watchOff(state, hold, at, vacuumPa, rows)
-      return
-    } else settleFall(state, hold, at, rows)
-  } else {
-    const fall = findFall(state, hold, at, vacuumPa)
-    if (fall !== null) {
-      state.fall = fall
-      watchOff(state, hold, at, vacuumPa, rows)
-      return
-    }
+  learnStep(state, hold, vacuumPa)
+  if (vacuumPa >= offLinePa(state)) state.lowSince = null
+  else state.lowSince ??= at
+  if (isSteady(state, hold, at, vacuumPa, rows)) accept(state, hold, at, vacuumPa)
+  if (state.lowSince !== null && at - state.lowSince >= OFF_AFTER_MS) {
+    endHoldByOff(state, hold, state.lowSince, at, rows)
   }
-  accept(state, hold, at, vacuumPa)
-  watchOff(state, hold, at, vacuumPa, rows)
+}
+
+/** False while a fall is in progress or undecided; settles one that is over. */
+function isSteady(state: FoldState, hold: OpenHold, at: Instant, vacuumPa: number, rows: Row[]): boolean {
+  if (state.fall === null) {
+    state.fall = findFall(state, hold, at, vacuumPa)
+    return state.fall === null
+  }
+  if (cameBack(state.fall, vacuumPa)) {
+    pointFault(state.fall, at, rows)
+    state.fall = null
+    return true
+  }
+  if (stillFalling(state, state.fall, at, vacuumPa)) return false
+  settleFall(state, hold, at, rows)
+  return true
 }
 
 function accept(state: FoldState, hold: OpenHold, at: Instant, vacuumPa: number): void {
@@ -108,13 +114,18 @@ function accept(state: FoldState, hold: OpenHold, at: Instant, vacuumPa: number)
   extendLeg(state, hold, at, vacuumPa)
 }
 
-/** Noise and step of the gauge, from what neighbouring samples of a quiet hold differ by. */
-function learnNoise(state: FoldState, hold: OpenHold, at: Instant, vacuumPa: number): void {
-  if (hold.lastPa === null || hold.lastAt === null || at < hold.settledAt) return
+/** Step of the gauge: the least that neighbouring samples of a hold differ by. */
+function learnStep(state: FoldState, hold: OpenHold, vacuumPa: number): void {
+  if (hold.lastPa === null) return
   const raw = Math.abs(vacuumPa - hold.lastPa)
   if (raw > 0 && raw <= 0.3 * INHG) {
     state.stepPa = state.stepPa === 0 ? raw : Math.min(state.stepPa, raw)
   }
+}
+
+/** Noise of the gauge, from what neighbouring samples of a quiet hold differ by. */
+function learnNoise(state: FoldState, hold: OpenHold, at: Instant, vacuumPa: number): void {
+  if (hold.lastPa === null || hold.lastAt === null || at < hold.settledAt) return
   const seconds = (at - hold.lastAt) / SECOND
   if (seconds > 120) return
   const off = Math.abs(hold.lastPa - vacuumPa - state.slopePaPerSecond * seconds)
@@ -124,15 +135,8 @@ function learnNoise(state: FoldState, hold: OpenHold, at: Instant, vacuumPa: num
   state.sigmaPa = Math.max(0.1, sigma + (seen - sigma) / 64)
 }
 
-/** Notes how long the vacuum has been far under the cut-in; ends the hold when that means "off". */
-function watchOff(state: FoldState, hold: OpenHold, at: Instant, vacuumPa: number, rows: Row[]): void {
-  if (vacuumPa >= offLinePa(state)) {
-    state.lowSince = null
-    return
-  }
-  state.lowSince ??= at
-  if (at - state.lowSince < OFF_AFTER_MS) return
-  const since = state.lowSince
+/** The vacuum has been far under the cut-in for ten minutes without a start: the hold ended where that began. */
+function endHoldByOff(state: FoldState, hold: OpenHold, since: Instant, at: Instant, rows: Row[]): void {
   if (state.fall !== null) settleFall(state, hold, at, rows)
   closeLeg(state, at, rows)
   pushHold(state, { ...hold, endedAt: since, endPa: hold.lastPa }, 'interrupted', at, rows)

@@ -90,7 +90,7 @@ function hiddenRun(state: FoldState, sample: Sample, vacuumPa: number, rows: Row
   const lowPa = state.fall?.lowPa ?? hold?.lastPa ?? null
   if (hold === null || lowPa === null || sampleAt === null || vacuumPa - lowPa < HIDDEN_RISE_PA) return
   const spacingMs = sample.at - sampleAt
-  if (spacingMs < HIDDEN_RUN_MS || sampleAt <= hold.startedAt) {
+  if (state.recordsEdges || spacingMs < HIDDEN_RUN_MS || sampleAt <= hold.startedAt) {
     if (state.fall === null) riseFault(sampleAt, vacuumPa - lowPa, sample.at, rows)
     return
   }

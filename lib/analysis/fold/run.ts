@@ -4,7 +4,7 @@ import { endHold, offLinePa, openHold, pushHold } from './hold'
 import { leakSlope } from './leg'
 import { learnedCutInPa, learnedCutOutPa, pushRing, ringMedian } from './rings'
 import type { EndedHold, FoldState, OpenRun } from './state'
-import { decideTrigger, isOverLong } from './trigger'
+import { decideTrigger, isOverLong, type Decision } from './trigger'
 import type { Ending, Instant, Row, Trigger } from './types'
 
 export interface Start {
@@ -54,6 +54,7 @@ export function startRun(state: FoldState, start: Start, rows: Row[]): void {
     underPa: null,
     crossedAt: null,
     risingAt: start.at,
+    risingPa: start.startPa,
     supplyV: null,
   }
 }
@@ -95,6 +96,9 @@ function suddenFallPa(
   return fall === null ? suddenPa : Math.max(suddenPa, fallPa(fall))
 }
 
+/** Less than this is no rise. */
+const RISING_PA = 0.02 * INHG
+
 /** Takes in a sample while the pump is on. */
 export function runSample(
   state: FoldState,
@@ -108,12 +112,15 @@ export function runSample(
   if (supplyV !== null) run.supplyV = supplyV
   if (vacuumPa === null) return
   followCrossing(state, run, at, vacuumPa)
+  if (run.risingPa === null || Math.abs(vacuumPa - run.risingPa) > Math.max(RISING_PA, 3 * state.sigmaPa)) {
+    run.risingAt = at
+    run.risingPa = vacuumPa
+  }
   if (run.topPa === null) {
     run.lowPa = vacuumPa
     raiseTop(run, at, vacuumPa)
   } else if (run.fall !== null) followFall(state, run, run.fall, at, vacuumPa, rows)
   else if (vacuumPa > run.topPa) {
-    if (vacuumPa > run.topPa + state.sigmaPa) run.risingAt = at
     raiseTop(run, at, vacuumPa)
     run.onCurve ||= isOnCurve(state, run, at, vacuumPa)
   } else if (run.topPa - vacuumPa > Math.max(START_FALL_PA, noiseFloorPa(state))) {
@@ -196,7 +203,7 @@ export function stopRun(state: FoldState, stop: Stop, rows: Row[]): void {
   const seconds = (stop.at - run.startedAt) / SECOND
   const uncertainty = Math.max(run.edgeUncertaintySeconds, stop.edgeUncertaintySeconds)
   const end = { seconds, uncertaintySeconds: uncertainty }
-  const { trigger, byLength } = decideTrigger(state, run, end)
+  const { trigger, only } = decideTrigger(state, run, end)
   endRunFall(state, run, stop.knownAt, rows)
   const peakPa = peakOf(run, stop.stopPa)
   const recharge = trigger === 'unknown' && !run.startSeen ? null : rechargeOf(state, run, stop, peakPa)
@@ -220,7 +227,7 @@ export function stopRun(state: FoldState, stop: Stop, rows: Row[]): void {
   if (!run.setAside)
     learnFromRun(state, run, stop, {
       trigger,
-      byLength,
+      only,
       overLong: isOverLong(state, end),
       seconds,
       peakPa,
@@ -342,7 +349,7 @@ function learnFromRun(
   stop: Stop,
   seen: {
     trigger: Trigger
-    byLength: boolean
+    only: Decision['only']
     overLong: boolean
     seconds: number
     peakPa: number | null
@@ -359,12 +366,13 @@ function learnFromRun(
   }
   if (run.fromOff && run.startSeen && run.startPa !== null) learnLowStart(state, run.startPa)
   if (run.startSeen && seen.trigger === 'leak' && !startIsClose) learnSparseStart(state, run)
+  if (seen.only === 'level' && run.beforePa !== null) learnHighStart(state, run.beforePa)
   if (run.startPa === null) {
     if (run.startSeen) pushRing(rings.runSeconds, seen.seconds)
   } else if (seen.trigger === 'leak' && !seen.overLong) {
     pushRing(rings.runSeconds, seen.seconds)
     rings.longRunSeconds = []
-  } else if (seen.byLength) learnLongRun(state, seen.seconds)
+  } else if (seen.only === 'length') learnLongRun(state, seen.seconds)
 }
 
 /** Through samples up to two minutes apart: the level half way to the next, where the leak is slow enough. */
@@ -382,6 +390,17 @@ function learnLowStart(state: FoldState, startPa: number): void {
   if (Math.max(...rings.lowStartPa) - Math.min(...rings.lowStartPa) > 0.2 * INHG) return
   rings.cutInPa = rings.lowStartPa
   rings.lowStartPa = []
+}
+
+/** Flushes come at any level: five starts in a row that look too high, all alike, are the switch moved up. */
+function learnHighStart(state: FoldState, beforePa: number): void {
+  const { rings } = state
+  pushRing(rings.highStartPa, beforePa, RING_ENOUGH)
+  if (rings.highStartPa.length < RING_ENOUGH) return
+  if (Math.max(...rings.highStartPa) - Math.min(...rings.highStartPa) > 0.2 * INHG) return
+  rings.cutInPa = rings.highStartPa
+  rings.sparseStartPa = []
+  rings.highStartPa = []
 }
 
 /** Flushes differ in length: five over-long runs in a row alike are a slower pump. */

@@ -73,8 +73,9 @@ export interface OpenRun {
   underAt: Instant | null
   underPa: number | null
   crossedAt: Instant | null
-  /** Last time that the vacuum was seen to rise. */
+  /** Last time that the vacuum was seen to rise by something, and to where. */
   risingAt: Instant
+  risingPa: number | null
   supplyV: number | null
 }
 
@@ -136,8 +137,12 @@ export interface Rings {
   rechargePaPerSecond: number[]
   /** Seconds of leak runs; of all runs where there is no vacuum channel. */
   runSeconds: number[]
-  /** Levels of recent starts from far below, and lengths of recent over-long runs: five alike replace the ring. */
+  /**
+   * Levels of recent starts from far below, of starts that looked too high for the switch, and lengths of
+   * over-long runs: five alike replace the ring.
+   */
   lowStartPa: number[]
+  highStartPa: number[]
   longRunSeconds: number[]
   /** Starts without a visible fall seen through samples too far apart to be the switch's own level. */
   sparseStartPa: number[]
@@ -166,6 +171,8 @@ export interface FoldState {
   spacingMs: number
   /** Last sample that came in the logger's rhythm rather than at an edge. */
   rhythmAt: Instant | null
+  /** The logger was seen to record an edge when it happened: no run of its passes unseen between samples. */
+  recordsEdges: boolean
   settings: FoldSettings
   fitting: { loggerId: string; at: Instant; intervalSeconds: number; pump: boolean; vacuum: boolean } | null
   statement: { value: StatementValue; since: Instant } | null
@@ -199,6 +206,7 @@ export function initialState(): FoldState {
     sampleAt: null,
     spacingMs: 0,
     rhythmAt: null,
+    recordsEdges: false,
     settings: { kind: 'pass-through', cutOutPa: null, cutInPa: null },
     fitting: null,
     statement: null,
@@ -236,6 +244,7 @@ export function initialState(): FoldState {
       rechargePaPerSecond: [],
       runSeconds: [],
       lowStartPa: [],
+      highStartPa: [],
       longRunSeconds: [],
       sparseStartPa: [],
     },

@@ -35,6 +35,7 @@ function takeSample(state: FoldState, sample: Sample, rows: Row[]): void {
     state.lastGap = { from: previousAt, to: at }
   }
   const holdBefore = state.hold
+  const pumpBefore = state.channels.pumpOn
   takeWeather(state.channels, sample)
   state.at = at
   const measured = sample.vacuumPa !== null && Number.isFinite(sample.vacuumPa) ? sample.vacuumPa : null
@@ -50,6 +51,7 @@ function takeSample(state: FoldState, sample: Sample, rows: Row[]): void {
     state.channels.pumpAt = at
   }
   if (isInRhythm(state, at)) state.rhythmAt = at
+  else if (sample.pumpOn !== null && sample.pumpOn !== pumpBefore) state.recordsEdges = true
   state.spacingMs = previousAt === null ? 0 : at - previousAt
   state.sampleAt = at
   const holdBegan = state.hold !== null && state.hold !== holdBefore && state.hold.startSeen

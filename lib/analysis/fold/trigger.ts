@@ -10,13 +10,15 @@ export interface RunEnd {
   uncertaintySeconds: number
 }
 
-/** What started a run: see each rule. Also tells when only its length spoke for a flush. */
-export function decideTrigger(
-  state: FoldState,
-  run: OpenRun,
-  end: RunEnd,
-): { trigger: Trigger; byLength: boolean } {
-  const plain = (trigger: Trigger) => ({ trigger, byLength: false })
+export interface Decision {
+  trigger: Trigger
+  /** The one thing that spoke for a flush, where nothing was seen to fall. */
+  only: 'level' | 'length' | null
+}
+
+/** What started a run: see each rule. */
+export function decideTrigger(state: FoldState, run: OpenRun, end: RunEnd): Decision {
+  const plain = (trigger: Trigger): Decision => ({ trigger, only: null })
   if (state.settings.kind === 'on-demand') return plain('flush')
   if (run.fromOff) return plain('startup')
   if (!run.startSeen) return plain('unknown')
@@ -27,9 +29,9 @@ export function decideTrigger(
   if (run.fallPa !== null && run.fallPa > floor) return plain('flush')
   // A pump that is on raises the vacuum: what still falls is a flush that began before the start.
   if (run.startPa !== null && run.lowPa !== null && run.startPa - run.lowPa > floor) return plain('flush')
-  if (startsTooHigh(state, run)) return plain('flush')
+  if (startsTooHigh(state, run)) return { trigger: 'flush', only: 'level' }
   if (run.fellMidRun || run.onCurve) return plain('leak')
-  if (isOverLong(state, end)) return { trigger: 'flush', byLength: true }
+  if (isOverLong(state, end)) return { trigger: 'flush', only: 'length' }
   return plain('leak')
 }
 
@@ -38,7 +40,7 @@ export function decideTrigger(
  * have brought it there.
  */
 function startsTooHigh(state: FoldState, run: OpenRun): boolean {
-  if (run.beforePa === null || run.startSpacingMs < 20_000 || run.edgeUncertaintySeconds <= 2) return false
+  if (run.beforePa === null || state.recordsEdges || run.startSpacingMs < 20_000) return false
   if (!cutInIsKnown(state)) return false
   const leaked = 1.5 * state.slopePaPerSecond * (run.startSpacingMs / 1000)
   return run.beforePa - leaked > learnedCutInPa(state) + 0.35 * INHG
