@@ -64,8 +64,8 @@ export function dayAndClock(time: TimeLike, offsetSeconds: number, nowMs: number
 /** Whole units, the largest that fits: "40 s", "3 min", "9 h", "12 days". */
 export function span(seconds: number): string {
   const length = Math.abs(seconds)
-  if (length < 60) return `${Math.round(length)} s`
-  if (length < 3600) return `${Math.round(length / 60)} min`
+  if (length < 59.5) return `${Math.round(length)} s`
+  if (length < 3570) return `${Math.round(length / 60)} min`
   if (length < 48 * 3600) return `${Math.round(length / 3600)} h`
   return `${Math.round(length / 86_400)} days`
 }

@@ -13,7 +13,7 @@ import type { ZoneOffset } from '@/components/time'
 
 /** `full` is a filled disc, `open` a hollow triangle that points up: at least that much. */
 export type ScatterPoint = { atMs: number; value: number; shape: 'full' | 'open'; tone: Tone }
-export type ReferenceLine = { value: number; label: string; dotted?: boolean }
+export type ReferenceLine = { value: number; dotted?: boolean }
 
 type Props = {
   points: readonly ScatterPoint[]
@@ -27,6 +27,7 @@ type Props = {
   steps: readonly StepMark[]
   visits: readonly VisitMark[]
   offsets: readonly ZoneOffset[]
+  axisPx?: number
   height?: number
 }
 
@@ -43,7 +44,7 @@ function drawPoint(
     context.fill()
     return
   }
-  const size = 3.6 * ratio
+  const size = 3 * ratio
   context.moveTo(x, y - size)
   context.lineTo(x + size, y + size * 0.8)
   context.lineTo(x - size, y + size * 0.8)
@@ -54,10 +55,11 @@ function drawPoint(
 function drawPoints(plot: uPlot, colours: Colours, points: readonly ScatterPoint[]) {
   const ratio = devicePixelRatio
   clipped(plot, (context) => {
-    context.lineWidth = 1.4 * ratio
-    for (const point of points) {
+    context.lineWidth = 1.2 * ratio
+    // Hollow ones first: what the pump did by itself must not be hidden by what a flush cut short.
+    for (const point of [...points].sort((a, b) => (a.shape === b.shape ? 0 : a.shape === 'open' ? -1 : 1))) {
       context.fillStyle = colours[point.tone]
-      context.strokeStyle = colours[point.tone]
+      context.strokeStyle = point.shape === 'open' ? colours.field : colours[point.tone]
       drawPoint(context, xOf(plot, point.atMs), plot.valToPos(point.value, 'y', true), point.shape, ratio)
     }
   })
@@ -68,10 +70,7 @@ function drawLines(plot: uPlot, colours: Colours, lines: readonly ReferenceLine[
   const { left, width } = plot.bbox
   clipped(plot, (context) => {
     context.strokeStyle = colours['ink-2']
-    context.fillStyle = colours['ink-2']
     context.lineWidth = ratio
-    context.font = `12px ${colours.font}`.replace('12px', `${12 * ratio}px`)
-    context.textAlign = 'right'
     for (const line of lines) {
       const y = Math.round(plot.valToPos(line.value, 'y', true)) + 0.5
       context.setLineDash(line.dotted ? [2 * ratio, 3 * ratio] : [])
@@ -79,7 +78,6 @@ function drawLines(plot: uPlot, colours: Colours, lines: readonly ReferenceLine[
       context.moveTo(left, y)
       context.lineTo(left + width, y)
       context.stroke()
-      context.fillText(line.label, left + width - 4 * ratio, y - 4 * ratio)
     }
     context.setLineDash([])
   })
@@ -87,7 +85,7 @@ function drawLines(plot: uPlot, colours: Colours, lines: readonly ReferenceLine[
 
 /** Points in time against a value, with lines to hold them to, steps and visits in their places. */
 export function ScatterPlot(props: Props) {
-  const { low, high, logarithmic, ticks, tickLabel, height = 260 } = props
+  const { low, high, logarithmic, ticks, tickLabel, axisPx = 52, height = 260 } = props
   const colours = useColours()
   const offsets = useSameOffsets(props.offsets)
   const [attach, width] = useWidth()
@@ -108,7 +106,7 @@ export function ScatterPlot(props: Props) {
   const options = useMemo(
     (): Omit<uPlot.Options, 'width' | 'height'> => ({
       legend: { show: false },
-      padding: [8, 12, 0, 0],
+      padding: [8, 30, 0, 0],
       cursor: { show: false },
       scales: {
         x: {
@@ -119,7 +117,7 @@ export function ScatterPlot(props: Props) {
       },
       axes: [
         timeAxis(colours, offsets),
-        { ...valueAxis(colours, tickLabel, [...ticks]), filter: (_plot, splits) => splits },
+        { ...valueAxis(colours, tickLabel, [...ticks]), size: axisPx, filter: (_plot, splits) => splits },
       ],
       series: [{}, { paths: () => null, points: { show: false } }],
       hooks: {
@@ -133,7 +131,7 @@ export function ScatterPlot(props: Props) {
         ],
       },
     }),
-    [colours, low, high, logarithmic, ticks, tickLabel, offsets],
+    [colours, low, high, logarithmic, ticks, tickLabel, axisPx, offsets],
   )
   return (
     <div ref={attach} style={{ minHeight: height }}>

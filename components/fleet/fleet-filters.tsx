@@ -7,7 +7,7 @@ import { STATE_MEANINGS, STATE_WORDS, type SystemState } from '@/components/stat
 import { StateMark } from '@/components/ui/state-mark'
 
 const CHIP =
-  'inline-flex min-h-11 items-center gap-2 rounded-sm border border-field px-2.5 lg:min-h-9 aria-pressed:border-ink aria-pressed:font-semibold aria-pressed:inset-shadow-[0_-2px_0_var(--ink)]'
+  'inline-flex min-h-11 items-center gap-2 whitespace-nowrap rounded-sm border border-field px-2.5 lg:min-h-9 aria-pressed:border-ink aria-pressed:font-semibold aria-pressed:inset-shadow-[0_-2px_0_var(--ink)]'
 const SELECT = 'min-h-11 rounded-sm border border-field bg-water px-2 lg:min-h-9'
 
 function isTyping(target: EventTarget | null): boolean {
@@ -45,19 +45,21 @@ export function FleetFilters({
     })
   return (
     <div className="no-print mb-4 flex flex-wrap items-center gap-2">
-      {counts.map(({ state, count }) => (
-        <button
-          key={state}
-          type="button"
-          className={CHIP}
-          aria-pressed={view.states.includes(state)}
-          title={STATE_MEANINGS[state]}
-          onClick={() => toggle(state)}
-        >
-          <StateMark state={state} />
-          {STATE_WORDS[state]} <span className="figure">{count}</span>
-        </button>
-      ))}
+      <div className="-mx-5 flex max-w-[100vw] gap-2 overflow-x-auto px-5 sm:mx-0 sm:flex-wrap sm:px-0">
+        {counts.map(({ state, count }) => (
+          <button
+            key={state}
+            type="button"
+            className={CHIP}
+            aria-pressed={view.states.includes(state)}
+            title={STATE_MEANINGS[state]}
+            onClick={() => toggle(state)}
+          >
+            <StateMark state={state} />
+            {STATE_WORDS[state]} <span className="figure">{count}</span>
+          </button>
+        ))}
+      </div>
       <div className="flex w-full flex-wrap gap-2 lg:ml-auto lg:w-auto">
         {harbours.length > 1 ? (
           <select
@@ -90,7 +92,7 @@ export function FleetFilters({
           aria-label="Find a boat or berth"
           aria-keyshortcuts="/"
           placeholder="Find a boat or berth  /"
-          className="min-h-11 min-w-0 flex-1 rounded-sm border border-field bg-water px-2.5 placeholder:text-ink-2 lg:min-h-9 lg:w-60"
+          className="min-h-11 min-w-0 flex-1 basis-full rounded-sm border border-field bg-water px-2.5 placeholder:text-ink-2 sm:basis-60 lg:min-h-9"
           value={view.find}
           onChange={(event) => change({ find: event.target.value })}
           onKeyDown={(event) => {

@@ -32,24 +32,21 @@ export function Acknowledge({ notice }: { notice: Notice }) {
   const snooze = (snoozedUntil: string | null) =>
     attempt(() => send('PATCH', `/api/notices/${notice.id}`, { snoozedUntil }))
   return (
-    <form onSubmit={(event) => void submit(event)} className="no-print mt-3 grid max-w-[38em] gap-2">
+    <form onSubmit={(event) => void submit(event)} className="no-print mt-3 grid gap-2">
       {notice.acknowledgedAt === null ? (
-        <>
-          <label className="grid gap-1">
-            <span className="datum">A note for whoever reads this next, if you like</span>
-            <input
-              maxLength={2000}
-              className="min-h-11 rounded-sm border border-field bg-water px-3"
-              {...register('note')}
-            />
-          </label>
-          <div className="flex flex-wrap gap-2">
-            <Button type="submit" disabled={formState.isSubmitting}>
-              I have seen it
-            </Button>
-            <SnoozeButton notice={notice} snooze={snooze} />
-          </div>
-        </>
+        <div className="flex flex-wrap gap-2">
+          <input
+            aria-label="A note for whoever reads this next"
+            placeholder="A note for whoever reads this next"
+            maxLength={2000}
+            className="min-h-11 min-w-0 flex-1 basis-64 rounded-sm border border-field bg-water px-3 placeholder:text-ink-2 sm:max-w-[26em]"
+            {...register('note')}
+          />
+          <Button type="submit" disabled={formState.isSubmitting}>
+            I have seen it
+          </Button>
+          <SnoozeButton notice={notice} snooze={snooze} />
+        </div>
       ) : (
         <div>
           <SnoozeButton notice={notice} snooze={snooze} />

@@ -52,7 +52,6 @@ export function NoticeItem({
         </span>
       </div>
       <p className="mt-1 max-w-[52em]">{notice.reason}</p>
-      <p className="datum">{NOTICE_MEANINGS[notice.kind]}</p>
       {notice.acknowledgedAt ? (
         <p className="mt-1">
           Seen by {notice.acknowledgedBy ?? 'somebody'} {ago(notice.acknowledgedAt, nowMs)}
@@ -61,6 +60,7 @@ export function NoticeItem({
       ) : null}
       <details className="mt-2" onToggle={(event) => setOpen(event.currentTarget.open)}>
         <summary>Evidence, and who was told</summary>
+        <p className="mt-2 text-ink-2">{`${NOTICE_WORDS[notice.kind]}: ${NOTICE_MEANINGS[notice.kind]}.`}</p>
         {evidence.length > 0 ? (
           <dl className="mt-2 grid max-w-[38em] grid-cols-[auto_1fr] gap-x-6 gap-y-1">
             {evidence.map((line) => (

@@ -16,8 +16,8 @@ const STATUS_WORDS: Record<Visit['status'], string> = {
   closed: '',
 }
 
-/** Asks the shop that looks after the boat to come; says so when it has been asked already. */
-export function AskVisit({ vessel }: { vessel: Vessel }) {
+/** Asks the shop that looks after the boat to come; says so when it has been asked already. `folded` for a calm boat. */
+export function AskVisit({ vessel, folded = false }: { vessel: Vessel; folded?: boolean }) {
   const { mutate } = useSWRConfig()
   const visits = useApi<List<Visit>>(`/api/visits?vessel=${vessel.id}`)
   const { register, handleSubmit, formState, setError, reset } = useForm<{ complaint: string }>({
@@ -55,9 +55,9 @@ export function AskVisit({ vessel }: { vessel: Vessel }) {
       </div>
     )
   }
-  return (
+  const form = (
     <form onSubmit={(event) => void submit(event)} className="max-w-[38em]">
-      <h2>A visit from {shop.shopName}</h2>
+      {folded ? null : <h2>A visit from {shop.shopName}</h2>}
       <label className="mt-2 grid gap-1">
         <span className="datum">What you noticed, if anything; the readings go along by themselves.</span>
         <textarea
@@ -72,5 +72,12 @@ export function AskVisit({ vessel }: { vessel: Vessel }) {
       </Button>
       {formState.errors.root?.message ? <Trouble title={formState.errors.root.message} /> : null}
     </form>
+  )
+  if (!folded) return form
+  return (
+    <details>
+      <summary>Ask {shop.shopName} for a visit</summary>
+      {form}
+    </details>
   )
 }

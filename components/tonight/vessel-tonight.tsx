@@ -2,6 +2,7 @@
 
 import Link from 'next/link'
 import { useApi } from '@/components/data/use-api'
+import { isTroubled } from '@/components/states'
 import { AboardControls } from '@/components/tonight/aboard-controls'
 import { AskVisit } from '@/components/tonight/ask-visit'
 import { Hush } from '@/components/tonight/hush'
@@ -24,7 +25,7 @@ export function VesselTonight({ id, name }: { id: string; name: string }) {
       </div>
       <div className="no-print mt-7 grid gap-x-16 gap-y-7 lg:grid-cols-[minmax(0,38rem)_minmax(0,34rem)]">
         <div className="grid content-start gap-4">
-          <AskVisit vessel={vessel} />
+          <AskVisit vessel={vessel} folded={!vessel.systems.some((system) => isTroubled(system.state))} />
           <Hush vessel={vessel} />
         </div>
         <div className="grid content-start gap-6">

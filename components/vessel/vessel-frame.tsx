@@ -24,7 +24,7 @@ function Count({ path }: { path: string }) {
 function SystemChoice({ vessel, system, path }: { vessel: Vessel; system: System; path: string }) {
   if (vessel.systems.length < 2) return null
   return (
-    <nav aria-label="Systems of this vessel" className="mt-2 flex flex-wrap gap-4">
+    <nav aria-label="Systems of this vessel" className="flex flex-wrap gap-4">
       {vessel.systems.map((other) => (
         <Link
           key={other.id}

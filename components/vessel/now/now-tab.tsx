@@ -38,7 +38,7 @@ export function NowTab({ id }: { id: string }) {
               <tbody>
                 {nowFigures(summary, outlook, system, units.vacuum, offsets, now).map((line) => (
                   <tr key={line.name}>
-                    <th scope="row" className="w-[40%] border-b! border-line! pt-2 text-body! font-normal!">
+                    <th scope="row" className="w-[40%]">
                       {line.name}
                     </th>
                     <td className="figure whitespace-nowrap">{line.value}</td>

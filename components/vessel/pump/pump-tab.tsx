@@ -61,7 +61,7 @@ export function PumpTab({ id }: { id: string }) {
             logarithmic={false}
             ticks={ticks}
             tickLabel={String}
-            lines={usual === null ? [] : [{ value: fromPa(usual, units.vacuum), label: 'usual' }]}
+            lines={usual === null ? [] : [{ value: fromPa(usual, units.vacuum) }]}
             steps={[]}
             visits={[]}
             offsets={[{ from: 0, seconds: vessel.utcOffsetSeconds }]}
@@ -72,7 +72,8 @@ export function PumpTab({ id }: { id: string }) {
         <p className="text-ink-2">No run by itself in {DAYS} days with the vacuum measured at both ends.</p>
       )}
       <p className="datum">
-        Only runs by themselves: they refill the same differential each time, so a change is the pump’s.
+        Only runs by themselves: they refill the same differential each time, so a change is the pump’s. The
+        line is the usual recharge.
       </p>
       <h2 className="mt-8 mb-2">Day by day</h2>
       <PumpDaysTable days={days} />

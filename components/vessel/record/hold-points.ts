@@ -46,13 +46,21 @@ export function holdsFinding(holds: readonly Hold[], days: number, { limitSecond
   )}; ${under} stayed under the limit of ${formatDuration(limitSeconds)}. A flush cut ${cut} short.`
 }
 
-/** Ticks of the hold axis that fit these holds: whole words from ten seconds to ten days. */
+/** Ticks of the hold axis that are not near the limit or the aim, which always have theirs. */
 const TICKS = [10, 60, 600, 3600, 10_800, 28_800, 86_400, 172_800, 864_000]
 export function holdAxis(points: readonly ScatterPoint[], { limitSeconds, aimSeconds }: Limits) {
   const values = [limitSeconds / 3, aimSeconds * 2, ...points.map((point) => point.value)]
-  const least = values.reduce((a, b) => Math.min(a, b))
-  const most = values.reduce((a, b) => Math.max(a, b))
-  const low = least * 0.8
-  const high = most * 1.25
-  return { low, high, ticks: TICKS.filter((tick) => tick >= low && tick <= high) }
+  const low = values.reduce((a, b) => Math.min(a, b)) * 0.8
+  const high = values.reduce((a, b) => Math.max(a, b)) * 1.25
+  const own = [limitSeconds, aimSeconds]
+  const clear = (tick: number) => own.every((mine) => Math.abs(Math.log(tick / mine)) > 0.4)
+  const ticks = [...own, ...TICKS.filter((tick) => tick >= low && tick <= high && clear(tick))]
+  return { low, high, ticks: ticks.sort((a, b) => a - b) }
+}
+
+/** A tick in words, limit and aim by name: "limit 3 h". */
+export function holdTickLabel(seconds: number, { limitSeconds, aimSeconds }: Limits): string {
+  const length = seconds === 60 ? '1 min' : formatDuration(seconds)
+  if (seconds === limitSeconds) return `limit ${length}`
+  return seconds === aimSeconds ? `aim ${length}` : length
 }

@@ -1,16 +1,15 @@
 'use client'
 
-import { useMemo, useState } from 'react'
+import { useCallback, useMemo, useState } from 'react'
 import type { StepMark, VisitMark } from '@/components/charts/annotations'
 import { ScatterPlot } from '@/components/charts/scatter-plot'
 import { withQuery } from '@/components/data/request'
 import { useNow } from '@/components/data/use-now'
 import { useWholeList } from '@/components/data/use-whole-list'
 import { Loading, Trouble } from '@/components/ui/sheet-states'
-import { holdAxis, holdPoints, holdsFinding } from '@/components/vessel/record/hold-points'
+import { holdAxis, holdPoints, holdsFinding, holdTickLabel } from '@/components/vessel/record/hold-points'
 import { HoldsTable } from '@/components/vessel/record/holds-table'
 import type { Hold, System, Vessel } from '@/shared/schemas'
-import { formatDuration } from '@/shared/units'
 
 const DAY_MS = 86_400_000
 const STRETCHES = [14, 60, 365] as const
@@ -46,10 +45,11 @@ export function HoldsSection({
     [points, limitSeconds, aimSeconds],
   )
   const lines = useMemo(
-    () => [
-      { value: limitSeconds, label: `limit ${formatDuration(limitSeconds)}`, dotted: true },
-      { value: aimSeconds, label: `aim ${formatDuration(aimSeconds)}` },
-    ],
+    () => [{ value: limitSeconds, dotted: true }, { value: aimSeconds }],
+    [limitSeconds, aimSeconds],
+  )
+  const tickLabel = useCallback(
+    (seconds: number) => holdTickLabel(seconds, { limitSeconds, aimSeconds }),
     [limitSeconds, aimSeconds],
   )
   const offsets = useMemo(() => [{ from: 0, seconds: vessel.utcOffsetSeconds }], [vessel.utcOffsetSeconds])
@@ -83,7 +83,8 @@ export function HoldsSection({
               range={range}
               {...axis}
               logarithmic
-              tickLabel={formatDuration}
+              axisPx={78}
+              tickLabel={tickLabel}
               lines={lines}
               steps={steps}
               visits={visits}

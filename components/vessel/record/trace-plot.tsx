@@ -71,7 +71,7 @@ export function TracePlot({ data, range, unit, marks, onSelect, onReadout }: Pro
     const line = { stroke: colours.act, width: 1.4, spanGaps: false, points: { show: false } }
     return {
       legend: { show: false },
-      padding: [8, 12, 0, 0],
+      padding: [8, 30, 0, 0],
       cursor: { drag: { x: true, y: false, setScale: false }, points: { size: 6 } },
       scales: {
         x: {

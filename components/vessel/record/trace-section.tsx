@@ -63,7 +63,7 @@ export function TraceSection({
       if (!event.ctrlKey && !element.contains(document.activeElement)) return
       event.preventDefault()
       const box = element.getBoundingClientRect()
-      const about = Math.min(1, Math.max(0, (event.clientX - box.left - 52) / Math.max(1, box.width - 64)))
+      const about = Math.min(1, Math.max(0, (event.clientX - box.left - 52) / Math.max(1, box.width - 82)))
       setRange(zoomed(range, event.deltaY > 0 ? 1.25 : 0.8, about, Date.now()))
     }
     element.addEventListener('wheel', onWheel, { passive: false })

@@ -15,7 +15,7 @@ export function SetUpTab({ id }: { id: string }) {
   if (!vessel || !system) return <Loading what="the set-up" />
   const total = system.parts.reduce((sum, part) => sum + (part.volumeM3 ?? 0), 0)
   return (
-    <div className="mt-6 grid gap-x-16 gap-y-8 xl:grid-cols-[minmax(0,1fr)_minmax(0,34rem)]">
+    <div className="mt-6 grid gap-10">
       <div>
         <h2 className="mb-3">The system as drawn</h2>
         {system.parts.length > 0 ? (
@@ -30,7 +30,7 @@ export function SetUpTab({ id }: { id: string }) {
           </p>
         )}
       </div>
-      <div className="grid content-start gap-8">
+      <div className="grid items-start gap-x-16 gap-y-8 md:grid-cols-2 2xl:grid-cols-3">
         {setUpLines(vessel, system, units, total, now).map((group) => (
           <section key={group.title}>
             <h2 className="mb-1">{group.title}</h2>
@@ -38,7 +38,7 @@ export function SetUpTab({ id }: { id: string }) {
               <tbody>
                 {group.lines.map((line) => (
                   <tr key={line.name}>
-                    <th scope="row" className="w-[44%] border-b! border-line! pt-2 text-body! font-normal!">
+                    <th scope="row" className="w-[44%]">
                       {line.name}
                     </th>
                     <td>{line.value}</td>
