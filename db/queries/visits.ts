@@ -65,3 +65,81 @@ export async function readVisits(
   )
   return rows
 }
+
+export interface NewVisit {
+  vesselId: string
+  systemId: string | null
+  shopId: string
+  complaint: string
+  askedBy: string
+  askedAt: Date
+}
+
+export async function insertVisit(trx: Trx, visit: NewVisit): Promise<string> {
+  const [row] = await trx('visit')
+    .insert({
+      vessel_id: visit.vesselId,
+      system_id: visit.systemId,
+      shop_id: visit.shopId,
+      complaint: visit.complaint,
+      asked_by: visit.askedBy,
+      asked_at: visit.askedAt,
+    })
+    .returning<{ id: string }[]>('id')
+  if (row === undefined) throw new Error('the visit was not inserted')
+  return row.id
+}
+
+/** Shops that may see a vessel, or keep it. */
+export async function shopsOfVessel(trx: Trx, vesselId: string): Promise<string[]> {
+  const { rows } = await trx.raw<{ rows: { id: string }[] }>(
+    `select shop_id as id from shop_access where vessel_id = :vessel and withdrawn_at is null
+     union select kept_by_shop_id from vessel where id = :vessel and kept_by_shop_id is not null order by id`,
+    { vessel: vesselId },
+  )
+  return rows.map((row) => row.id)
+}
+
+export async function systemIsOn(trx: Trx, systemId: string, vesselId: string): Promise<boolean> {
+  return (await trx('system').where({ id: systemId, vessel_id: vesselId }).first('id')) !== undefined
+}
+
+export interface VisitColumns {
+  status?: VisitStatus | undefined
+  complaint?: string | undefined
+  systemId?: string | undefined
+  plannedFor?: Date | null | undefined
+  assignedTo?: string | null | undefined
+  startedAt?: Date | undefined
+  finishedAt?: Date | undefined
+  closedAt?: Date | null | undefined
+  verdict?: RepairVerdict | null | undefined
+  summary?: string | null | undefined
+}
+
+export async function updateVisit(trx: Trx, visitId: string, change: VisitColumns): Promise<void> {
+  const columns = {
+    status: change.status,
+    complaint: change.complaint,
+    system_id: change.systemId,
+    planned_for: change.plannedFor,
+    assigned_to: change.assignedTo,
+    started_at: change.startedAt,
+    finished_at: change.finishedAt,
+    closed_at: change.closedAt,
+    verdict: change.verdict,
+    summary: change.summary,
+  }
+  const named = Object.fromEntries(Object.entries(columns).filter(([, value]) => value !== undefined))
+  if (Object.keys(named).length > 0) await trx('visit').where({ id: visitId }).update(named)
+}
+
+/** Whether somebody works for a shop, in a role that goes on visits. */
+export async function worksFor(trx: Trx, personId: string, shopId: string): Promise<boolean> {
+  const row = await trx('membership')
+    .where({ person_id: personId, shop_id: shopId })
+    .whereIn('role', ['technician', 'manager'])
+    .whereNull('ended_at')
+    .first('id')
+  return row !== undefined
+}

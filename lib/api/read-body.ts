@@ -36,11 +36,13 @@ export async function readText(request: Request, limitBytes = MAX_BODY_BYTES): P
   }
 }
 
-/** @throws Problem `wrong-media-type`, `too-large`, `not-parseable` */
+/** Nothing at all sent is an empty object. @throws Problem `wrong-media-type`, `too-large`, `not-parseable` */
 export async function readJson(request: Request): Promise<unknown> {
-  const type = request.headers.get('content-type')?.split(';')[0]?.trim().toLowerCase() ?? ''
-  if (type !== 'application/json')
+  const type = mediaType(request)
+  if (type !== 'application/json') {
+    if (type === '' && (await readText(request)) === '') return {}
     throw new Problem('wrong-media-type', 'Send JSON, with content-type application/json.')
+  }
   const text = await readText(request)
   try {
     return JSON.parse(text)
@@ -50,10 +52,12 @@ export async function readJson(request: Request): Promise<unknown> {
   }
 }
 
+const mediaType = (request: Request): string =>
+  request.headers.get('content-type')?.split(';')[0]?.trim().toLowerCase() ?? ''
+
 /** The fields of a form, first value of each. @throws Problem `wrong-media-type`, `too-large` */
 export async function readForm(request: Request): Promise<Record<string, string>> {
-  const type = request.headers.get('content-type')?.split(';')[0]?.trim().toLowerCase() ?? ''
-  if (type !== 'application/x-www-form-urlencoded')
+  if (mediaType(request) !== 'application/x-www-form-urlencoded')
     throw new Problem('wrong-media-type', 'Send a form, with content-type application/x-www-form-urlencoded.')
   const fields: Record<string, string> = {}
   for (const [name, value] of new URLSearchParams(await readText(request))) fields[name] ??= value

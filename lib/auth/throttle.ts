@@ -64,6 +64,13 @@ export async function forgiveTry(email: string, from: string): Promise<void> {
 }
 
 const guesses = limiter('guess', 30, QUARTER_HOUR)
+const claims = limiter('claim', 120, QUARTER_HOUR)
+
+/** Keeps one address from filling the table of claims; a whole harbour may share one. @throws Problem */
+export async function countClaim(from: string): Promise<void> {
+  const wait = await take(claims, from.slice(0, 64))
+  if (wait > 0) throw tooMany(wait)
+}
 
 /** Stops the trying of codes and one-time secrets. @throws Problem `too-many-requests` */
 export async function countGuess(what: string, from: string): Promise<void> {
@@ -72,8 +79,6 @@ export async function countGuess(what: string, from: string): Promise<void> {
 }
 
 export const tooMany = (waitSeconds: number): Problem =>
-  new Problem(
-    'too-many-requests',
-    `Too many tries. Try again in ${Math.ceil(waitSeconds / 60)} min, or set a new password.`,
-    { headers: { 'retry-after': String(waitSeconds) } },
-  )
+  new Problem('too-many-requests', `Too many tries. Try again in ${Math.ceil(waitSeconds / 60)} min.`, {
+    headers: { 'retry-after': String(waitSeconds) },
+  })

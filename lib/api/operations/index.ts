@@ -1,0 +1,22 @@
+import type { Operation } from '../operation'
+import { loggerOperations } from './loggers'
+import { noticeOperations } from './notices'
+import { peopleOperations } from './people'
+import { readingOperations } from './reading'
+import { serviceOperations } from './service'
+import { vesselOperations } from './vessels'
+import { visitOperations } from './visits'
+
+/** Every address with a schema of its own; sign-in and the upload of samples are described beside them. */
+export const OPERATIONS: readonly Operation[] = [
+  ...vesselOperations,
+  ...loggerOperations,
+  ...readingOperations,
+  ...noticeOperations,
+  ...visitOperations,
+  ...peopleOperations,
+  ...serviceOperations,
+]
+
+/** Addresses that other machines of ours call, and no client: left out of the document on purpose. */
+export const INTERNAL_PATHS: readonly string[] = ['/api/{path}', '/api/sms/inbound', '/api/sms/status']
