@@ -109,6 +109,22 @@ export async function waitingMessage(
   return row === undefined ? null : { id: String(row.id), sendAfter: row.send_after, linkCode: row.link_code }
 }
 
+/** Takes the events out of the messages that still wait, and those back. @returns the events. */
+export async function absorbWaiting(
+  trx: Trx,
+  to: { personId: string; channel: Channel; address: string },
+  now: Date,
+): Promise<string[]> {
+  const eventIds: string[] = []
+  for (let waiting = await waitingMessage(trx, { ...to, urgency: 'day' }, now); waiting !== null;) {
+    eventIds.push(...(await subjectsOf(trx, waiting.id)))
+    await trx('message_subject').where({ message_id: waiting.id }).delete()
+    await cancelMessage(trx, waiting.id, now)
+    waiting = await waitingMessage(trx, { ...to, urgency: 'day' }, now)
+  }
+  return eventIds
+}
+
 /** @returns the events newly named: those this person was already told on this channel are left out. */
 export async function insertSubjects(
   trx: Trx,

@@ -34,7 +34,9 @@ export async function compose(
   reader: Reader,
   places: Places,
 ): Promise<Body> {
-  const boats = events.map((event) => boatWords(event, reader.units, places))
+  // The night first: what is to be done this evening stands before what can wait.
+  const inOrder = [...events].sort((a, b) => rankOf(a) - rankOf(b))
+  const boats = inOrder.map((event) => boatWords(event, reader.units, places))
   if (channel === 'sms') return { subject: null, bodyText: textMessage(boats, places), bodyHtml: null }
   const actUrl = `${places.appUrl}/a/${places.linkCode}`
   const greeting = `For ${reader.name}`
@@ -52,6 +54,12 @@ export async function compose(
   }
 }
 
+const rankOf = (event: ToldEvent): number => (event.kind === 'night-warning' ? 0 : 1)
+
+/** The first of what there is to say of each boat. */
+const onePerBoat = (boats: BoatWords[]): BoatWords[] =>
+  boats.filter((boat, index) => boats.findIndex((other) => other.boat === boat.boat) === index)
+
 function boatWords(event: ToldEvent, units: Units, places: Places): BoatWords {
   return {
     boat: event.systemName === '' ? event.vesselName : `${event.vesselName}, ${event.systemName}`,
@@ -61,13 +69,15 @@ function boatWords(event: ToldEvent, units: Units, places: Places): BoatWords {
 }
 
 function subjectOf(boats: BoatWords[]): string {
-  const [first, ...others] = boats
+  const [first] = boats
   if (first === undefined) return ''
-  if (others.length === 0) return `${first.boat}: ${first.wording.subject}`
   const names = [...new Set(boats.map((boat) => boat.boat))]
+  if (names.length === 1 && first.wording.strip !== null) return `${first.boat}: ${first.wording.subject}`
   if (names.length === 1) return `${first.boat}: ${boats.map((boat) => boat.wording.subject).join('; ')}`
-  const same = boats.every((boat) => boat.wording.strip !== null)
-  return same ? `The toilet pump is likely to run tonight on ${listed(names)}` : `News of ${listed(names)}`
+  const nights = boats.filter((boat) => boat.wording.strip !== null).map((boat) => boat.boat)
+  return nights.length > 0
+    ? `The toilet pump is likely to run tonight on ${listed(nights)}`
+    : `News of ${listed(names)}`
 }
 
 const listed = (names: string[]): string =>
@@ -97,7 +107,8 @@ function plainMail(boats: BoatWords[], greeting: string, actUrl: string): string
 }
 
 /** Boat, what, what to do, where to look, within one text of 160 letters of the basic alphabet. */
-function textMessage(boats: BoatWords[], places: Places): string {
+function textMessage(told: BoatWords[], places: Places): string {
+  const boats = onePerBoat(told)
   const link = `${places.appUrl.replace(/^https:\/\//, '')}/a/${places.linkCode}`
   const [first, ...others] = boats
   if (first === undefined) return ''

@@ -43,6 +43,7 @@ export const recordEvidenceSchema = z
     supplyV: z.number().nullable(),
     lowSupplyV: z.number().nullable(),
     airC: z.number().nullable(),
+    sinceAt: z.string().nullable(),
     sinceLocal: z.string().nullable(),
     untilLocal: z.string().nullable(),
     fault: z.string().nullable(),

@@ -1,6 +1,7 @@
 import { randomInt } from 'node:crypto'
 import type { Trx } from '@/db/roles'
 import {
+  absorbWaiting,
   alreadyTold,
   cancelMessage,
   dropNoticesFrom,
@@ -14,16 +15,24 @@ import {
   type Channel,
   type Urgency,
 } from '@/db/queries/message-queue'
-import { messagePerson } from '@/db/queries/recipients'
-import { quietUntil, recipientsOf, type Recipient } from '@/db/queries/recipients'
+import { messagePerson, quietUntil, recipientsOf, type Recipient } from '@/db/queries/recipients'
 import { toldEvents, type ToldEvent } from '@/db/queries/notice-events'
+import { toldOfNight } from '@/db/queries/told'
+import { nightWindows } from '@/db/queries/zones'
 import { chooseAddresses, type ChosenAddress, type Subject } from '@/lib/messages/choose-addresses'
 import { env } from '@/lib/env'
 import { compose } from '@/lib/messages/compose'
+import { nightEvidenceSchema } from '@/lib/messages/evidence'
 import { enqueue } from '@/lib/messages/queue'
 
 /** News that can wait a moment is gathered, so that two findings of one upload are one message. */
 const GATHER_MS = 60_000
+/** In the evening it waits for what is said of the night, to be told together with it. */
+const EVENING_GATHER_MS = 5 * 60_000
+const EVENING_BEFORE_MS = 2 * 3_600_000 + EVENING_GATHER_MS
+const EVENING_AFTER_MS = 3_600_000
+/** What a night warning has said already, to those it was sent to. */
+const SAID_BY_NIGHT = ['short-hold', 'short-cycling']
 const LINK_ALPHABET = '23456789abcdefghjkmnpqrstuvwxyz'
 const LINK_LENGTH = 10
 
@@ -69,19 +78,29 @@ async function address(trx: Trx, events: ToldEvent[]): Promise<Addressed[]> {
     trx,
     events.map((event) => event.noticeId),
   )
+  const night = await toldOfNight(
+    trx,
+    events.map((event) => event.systemId),
+  )
   const groups = new Map<string, Addressed>()
   for (const event of events) {
     const people = onePerPerson(await recipientsOf(trx, event.vesselId), subjectOf(event, false))
     const subject = subjectOf(event, !people.some((person) => person.as === 'shop'))
     for (const person of people) {
       for (const chosen of chooseAddresses(person, subject)) {
-        const same = (entry: { personId: string; channel: Channel }) =>
+        const same = (entry: { personId: string; channel: string }) =>
           entry.personId === person.personId && entry.channel === chosen.channel
         if (told.some((entry) => entry.eventId === event.eventId && same(entry))) continue
         // An end is news only to those who heard of the beginning.
         if (
           event.transition === 'ended' &&
           !toldBefore.some((entry) => entry.noticeId === event.noticeId && same(entry))
+        )
+          continue
+        if (
+          SAID_BY_NIGHT.includes(event.kind) &&
+          event.transition === 'opened' &&
+          night.some((entry) => entry.systemId === event.systemId && same(entry))
         )
           continue
         const urgency = urgencyOf(event)
@@ -126,9 +145,11 @@ function urgencyOf(event: ToldEvent): Urgency {
 }
 
 async function send(trx: Trx, one: Addressed, now: Date): Promise<string> {
-  const { person, chosen, urgency, events } = one
-  const eventIds = events.map((event) => event.eventId)
+  const { person, chosen, urgency } = one
   const to = { personId: person.personId, channel: chosen.channel, address: chosen.address, urgency }
+  const absorbed = urgency === 'evening' ? await absorbWaiting(trx, to, now) : []
+  const eventIds = [...one.events.map((event) => event.eventId), ...absorbed]
+  const events = absorbed.length === 0 ? one.events : await toldEvents(trx, eventIds)
   const waiting = await waitingMessage(trx, to, now)
   if (waiting !== null) {
     await insertSubjects(trx, waiting.id, { ...to, eventIds })
@@ -169,20 +190,28 @@ async function sendAfterFor(trx: Trx, one: Addressed, now: Date): Promise<Date> 
   if (one.urgency === 'now' && one.chosen.urgentAtNight) return now
   const quietEnd = await quietUntil(trx, one.person.quiet, now)
   if (quietEnd !== null) return quietEnd
-  return one.urgency === 'now' ? now : new Date(now.getTime() + GATHER_MS)
+  if (one.urgency === 'now') return now
+  const gatherMs = (await isEvening(trx, one, now)) ? EVENING_GATHER_MS : GATHER_MS
+  return new Date(now.getTime() + gatherMs)
 }
 
-/** A night warning is of use until its night is over; other news keeps. */
-function usefulUntil(events: ToldEvent[]): Date | null {
-  const ends = events.map((event) => {
-    const quiet = event.kind === 'night-warning' ? event.evidence.quiet : null
-    const to = typeof quiet === 'object' && quiet !== null && 'to' in quiet ? quiet.to : null
-    return typeof to === 'string' ? new Date(to) : null
-  })
-  return ends.reduce<Date | null>(
-    (last, end) => (last === null || end === null ? null : end > last ? end : last),
-    ends[0] ?? null,
+/** Is one of these boats about to be, or just being, told what its night will bring? */
+async function isEvening(trx: Trx, one: Addressed, now: Date): Promise<boolean> {
+  const windows = await nightWindows(trx, [...new Set(one.events.map((event) => event.vesselId))], now)
+  return windows.some(
+    ({ from }) =>
+      now.getTime() >= from.getTime() - EVENING_BEFORE_MS &&
+      now.getTime() < from.getTime() + EVENING_AFTER_MS,
   )
+}
+
+/** A night warning is of use until its night is over, whatever else is told with it; other news keeps. */
+function usefulUntil(events: ToldEvent[]): Date | null {
+  const ends = events.flatMap((event) => {
+    const night = nightEvidenceSchema.pick({ quiet: true }).safeParse(event.evidence)
+    return event.kind === 'night-warning' && night.success ? [Date.parse(night.data.quiet.to)] : []
+  })
+  return ends.length === 0 ? null : new Date(Math.max(...ends))
 }
 
 /** About 49 bits: a link in a message acts without a password, so it must not be guessed. */

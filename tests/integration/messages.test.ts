@@ -7,7 +7,7 @@ import { openServices, SendError, type Services } from '@/lib/messages/services'
 import { tell } from '@/lib/messages/tell'
 import { startMailFake, type MailFake } from '@/simulator/fakes/mail'
 import { startSmsFake, type SmsFake } from '@/simulator/fakes/sms'
-import { makeBoat, makePerson, type Boat } from '../support/boats'
+import { makeBoat, makePerson, type Boat } from '../support/owned-boats'
 import { testDatabase, useDatabase, type TestDatabase } from '../support/database'
 import { SMS_TOKEN } from '../support/settings'
 

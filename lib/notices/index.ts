@@ -1,0 +1,3 @@
+export { acknowledgeNotice } from './acknowledge-notice'
+export { judgeSystem } from './judge-system'
+export { snoozeNotice } from './snooze-notice'
