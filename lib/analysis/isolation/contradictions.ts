@@ -6,6 +6,8 @@ import type { Contradiction } from './types'
 /** Tests that would differ as much by chance once in ten thousand cannot all be right. */
 const CONTRADICTORY = 1e-4
 const MOST_TOGETHER = 3
+/** Pairs are looked at up to so many tests, and triples: beyond, only all together. */
+const MOST_TESTS: Readonly<Record<number, number>> = { 2: 48, 3: 16 }
 
 /**
  * Tests that no set of leaks explains together, in the smallest sets that show it, and of each set the one
@@ -15,16 +17,21 @@ export function findContradictions(
   readings: readonly Reading[],
   priors: ReadonlyMap<string, number>,
 ): Contradiction[] {
-  const contradict = (some: readonly Reading[]) =>
-    some.length > 1 && chiSquaredUpper(misfit(some, priors), some.length - 1) < CONTRADICTORY
+  const together = misfit(readings, priors)
+  const isContradiction = (chiSquared: number, count: number) =>
+    count > 1 && chiSquaredUpper(chiSquared, count - 1) < CONTRADICTORY
+  // Some of the tests never fit worse than all: nothing to look for where all fit well enough for two.
+  if (!isContradiction(together, 2)) return []
   const found: number[][] = []
   for (let size = 2; size <= Math.min(MOST_TOGETHER, readings.length); size += 1) {
+    if (readings.length > (MOST_TESTS[size] ?? 0)) continue
     for (const set of subsets(readings.length, size)) {
       if (found.some((known) => known.every((index) => set.includes(index)))) continue
-      if (contradict(pick(readings, set))) found.push(set)
+      if (isContradiction(misfit(pick(readings, set), priors), size)) found.push(set)
     }
   }
-  const sets = found.length === 0 && contradict(readings) ? [readings.map((_, index) => index)] : found
+  const isAll = found.length === 0 && isContradiction(together, readings.length)
+  const sets = isAll ? [readings.map((_, index) => index)] : found
   return sets.map((tests) => ({ tests, repeat: worstOf(tests, readings, priors) }))
 }
 

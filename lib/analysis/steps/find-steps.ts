@@ -74,6 +74,9 @@ function isStep(legs: readonly WeighedLeg[], { before, after, z, at }: Split): b
   return lineChiSquared(legs) > before.chiSquared + after.chiSquared + BETTER_THAN_LINE
 }
 
+/** Legs on either side whose rates stand for the levels before and after. */
+const BESIDE = 8
+
 function describe(legs: readonly WeighedLeg[], cuts: readonly number[]): Step[] {
   return cuts.map((cut, index) => {
     const from = cuts[index - 1] ?? 0
@@ -81,8 +84,8 @@ function describe(legs: readonly WeighedLeg[], cuts: readonly number[]): Step[] 
     const split = widen(splitAt(part, cut - from), part)
     return {
       between: localise(part, split),
-      fromPaPerHour: levelOf(part.slice(0, split.at)).value,
-      toPaPerHour: levelOf(part.slice(split.at)).value,
+      fromPaPerHour: levelOf(part.slice(Math.max(0, split.at - BESIDE), split.at)).value,
+      toPaPerHour: levelOf(part.slice(split.at, split.at + BESIDE)).value,
       strength: Math.abs(split.z),
     }
   })

@@ -144,6 +144,43 @@ describe('properties', () => {
     )
   })
 
+  test('the quadratic form reaches the same minimum, from any start', () => {
+    fc.assert(
+      fc.property(
+        fc.array(fc.tuple(...Array.from({ length: 4 }, () => fc.integer({ min: -5, max: 5 }))), {
+          minLength: 5,
+          maxLength: 8,
+        }),
+        figures,
+        fc.subarray([0, 1, 2, 3]),
+        (A, raw, start) => {
+          const b = A.map((_, index) => raw[index % raw.length] ?? 0)
+          const exact = statistics.nonNegativeLeastSquares(A, b).residualNorm ** 2
+          const { x, value } = statistics.minimiseNonNegative(statistics.quadraticForm(A, b), start)
+          expect(Math.min(0, ...x)).toBe(0)
+          expect(Math.abs(value - exact)).toBeLessThan(
+            1e-6 * (1 + b.reduce((sum, goal) => sum + goal * goal, 0)),
+          )
+        },
+      ),
+    )
+  })
+
+  test('a held variable costs what the form says', () => {
+    const form = statistics.quadraticForm(
+      [
+        [1, 0],
+        [1, 1],
+        [0, 2],
+      ],
+      [1, 2, 3],
+    )
+    const held = statistics.minimiseNonNegative(statistics.holdVariable(form, 0, 0.5))
+    // Left: (1.5 − y)² + (3 − 2y)² + 0.25, least at y = 1.5.
+    expect(held.x[1]).toBeCloseTo(1.5, 12)
+    expect(held.value).toBeCloseTo(0.25, 12)
+  })
+
   test('a shift of one group shifts Hodges–Lehmann and its interval', () => {
     fc.assert(
       fc.property(figures, figures, fc.double({ min: -50, max: 50, noNaN: true }), (a, b, shift) => {

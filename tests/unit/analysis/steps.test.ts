@@ -37,7 +37,15 @@ describe('steps', () => {
   test('two: a leak that came and was cured', () => {
     const steps = findSteps(legsOf([...level(400, 20), ...level(1200, 15), ...level(420, 20)]))
     expect(steps).toHaveLength(2)
-    expect(steps[0]?.toPaPerHour).toBeCloseTo(steps[1]?.fromPaPerHour ?? 0, 6)
+    expect((steps[0]?.toPaPerHour ?? 0) / (steps[1]?.fromPaPerHour ?? 1)).toBeCloseTo(1, 1)
+  })
+
+  test('a leak that grew and was cured: from where it had come to', () => {
+    const growing = Array.from({ length: 60 }, (_, index) => 400 * Math.pow(2, index / 30))
+    const steps = findSteps(legsOf([...growing, ...level(400, 30)]))
+    expect(steps).toHaveLength(1)
+    expect(steps[0]?.fromPaPerHour ?? 0).toBeGreaterThan(1300)
+    expect((steps[0]?.toPaPerHour ?? 0) / 400).toBeCloseTo(1, 1)
   })
 
   test('two new holds are enough, one is not', () => {
