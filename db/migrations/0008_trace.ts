@@ -30,7 +30,7 @@ returns table (bucket timestamptz, first_at timestamptz, last_at timestamptz, ${
 language plpgsql stable security definer set search_path = public set jit = off as $$
 declare
   epoch constant timestamptz := '1970-01-01T00:00:00Z';
-  hour constant interval := interval '1 hour';
+  an_hour constant interval := interval '1 hour';
   by_hour constant boolean := p_step >= interval '1 hour';
 begin
   if current_person() is not null and p_system not in (select full_record_systems()) then
@@ -50,14 +50,14 @@ begin
     where c.since < f.hi and c.until > f.lo
   ), spans as (
     -- Whole hours lie in [hours_from, hours_to); without them that is empty, and all of it is read as samples.
-    select w.*, case when by_hour then greatest(date_bin(hour, w.hi, epoch), w.hours_from) else w.hi end as hours_to
+    select w.*, case when by_hour then greatest(date_bin(an_hour, w.hi, epoch), w.hours_from) else w.hi end as hours_to
     from (select q.*, case when by_hour
-        then least(date_bin(hour, q.lo + hour - interval '1 microsecond', epoch), q.hi) else q.hi end as hours_from
+        then least(date_bin(an_hour, q.lo + an_hour - interval '1 microsecond', epoch), q.hi) else q.hi end as hours_from
       from pieces q) w
   ), v as (${raw('p.lo', 'p.hours_from')}
     union all${raw('p.hours_to', 'p.hi')}
     union all
-    select s.hour, s.hour + hour, s.samples,
+    select s.hour, s.hour + an_hour, s.samples,
       (s.vacuum_min_pa - p.shift) * p.gain, (s.vacuum_max_pa - p.shift) * p.gain, (s.vacuum_mean_pa - p.shift) * p.gain,
       s.air_min_c, s.air_max_c, s.air_mean_c, null, null, null, s.supply_min_v, s.supply_max_v, s.supply_mean_v
     from spans p cross join lateral (
