@@ -1,30 +1,32 @@
+import { AFTER_FLUSH_MS, closeBowl, finishFlush, openBowl } from '@/simulator/bowls'
+import type { BoatAtWork } from '@/simulator/boat-at-work'
 import { openingEvents, type OpeningEvent } from '@/simulator/habits'
 import { isRecording, loggerClock, takeReading, type SimSample } from '@/simulator/logger'
-import { MS_PER_SECOND, PA_PER_INHG } from '@/simulator/physics/constants'
-import { airAmount, saturationPressurePa, toKelvin } from '@/simulator/physics/gas'
+import { MS_PER_SECOND } from '@/simulator/physics/constants'
+import { airAmount } from '@/simulator/physics/gas'
 import {
   gasRates,
   rungeKuttaStep,
   vacuumOf,
   type Gas,
   type StepConditions,
-  type Surroundings,
 } from '@/simulator/physics/integrate'
 import { areaForFlow } from '@/simulator/physics/leak-flow'
 import { freshCondition, inSpans, leakLawOf } from '@/simulator/physics/leaks'
 import { pumpingSpeed, supplyVoltage, wearFactor } from '@/simulator/physics/pump'
+import { crossing } from '@/simulator/physics/crossing'
+import { surroundingsOf } from '@/simulator/physics/surroundings'
 import { weatherOf } from '@/simulator/physics/weather'
-import { hash32, nextNormal, randomState } from '@/simulator/random'
+import { hash32, randomState } from '@/simulator/random'
 import { boundariesOf, type BoatSpec } from '@/simulator/spec'
 import { newState, type BoatState } from '@/simulator/state'
-import { gasVolumeM3, switchPointsAt, type TrueRun } from '@/simulator/truth'
+import { operateSwitch } from '@/simulator/switch-and-pump'
+import { gasVolumeM3, switchPointsAt } from '@/simulator/truth'
 
 const LONGEST_STEP_SECONDS = 15
 const SHORTEST_STEP_SECONDS = 0.25
 /** A step is cut so that the pressure moves by about so much in it. */
 const PRESSURE_STEP_PA = 150
-/** A pump start so soon after the bowl valve closed is still that flush's. */
-const AFTER_FLUSH_MS = 2000
 const SEARCH_AHEAD_MS = 6 * 3_600_000
 /** A vent stands open like a hole of some 6 mm. */
 const VENT_AREA_M2 = areaForFlow(500)
@@ -41,21 +43,11 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
   const sampleTime = (index: number): number => clock.trueAt(index * intervalMs + phaseMs)
   const sampleAfter = (at: number): number => Math.ceil((clock.says(at) - phaseMs) / intervalMs)
 
-  // --- the surroundings ---------------------------------------------------------------------------
-
-  const wallTargetC = (at: number): number =>
-    spec.weather.meanC + spec.gas.coupling * (weather.airC(at) - spec.weather.meanC)
-  const wallAfter = (wallC: number, at: number, seconds: number): number => {
-    if (spec.gas.lagSeconds <= 0) return wallTargetC(at + seconds * MS_PER_SECOND)
-    const target = wallTargetC(at + seconds * 500)
-    return wallC + (target - wallC) * (1 - Math.exp(-seconds / spec.gas.lagSeconds))
-  }
-  const surroundings = (at: number, wallC: number): Surroundings => ({
-    outsidePa: weather.barometerPa(at),
-    outsideK: toKelvin(weather.airC(at)),
-    wallK: toKelvin(wallC),
-    vapourPa: spec.gas.wetness > 0 ? spec.gas.wetness * saturationPressurePa(wallC) : 0,
-  })
+  const {
+    wallTargetC,
+    wallAfter,
+    around: surroundings,
+  } = surroundingsOf(weather, { ...spec.gas, meanC: spec.weather.meanC })
 
   // --- state --------------------------------------------------------------------------------------
 
@@ -104,8 +96,6 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
   const ventedAt = (at: number): boolean =>
     inSpans(spec.vented, at) ||
     spec.tank.pumpOuts.some((out) => at >= out.at && at < out.at + out.minutes * 60_000)
-  const poweredAt = (at: number): boolean =>
-    !inSpans(spec.breakerOff, at) && !inSpans(spec.layUp, at) && !inSpans(spec.pumpFails, at)
   const supplyAt = (at: number): number =>
     supplyVoltage(spec.supply, spec.seed, spec.offsetSeconds, state.pumpOn, at)
 
@@ -117,84 +107,15 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
     })
   }
 
-  // --- switch and pump ----------------------------------------------------------------------------
-
-  const scattered = (pa: number): number => pa + spec.switch.scatterPa * nextNormal(state.random.switch)
-
-  function operateSwitch(): void {
-    const vacuum = vacuumNow()
-    const points = switchPointsAt(spec.switch, state.t)
-    if (!state.switchClosed && vacuum <= state.cutInPa) {
-      state.switchClosed = true
-      state.cutOutPa = scattered(points.cutOutPa)
-    } else if (state.switchClosed && vacuum >= state.cutOutPa) {
-      state.switchClosed = false
-      state.cutInPa = Math.min(scattered(points.cutInPa), state.cutOutPa - 0.1 * PA_PER_INHG)
-    }
-    const powered = poweredAt(state.t)
-    if (!powered && state.openHold) state.openHold.interrupted = true
-    const on = state.switchClosed && powered
-    if (on && !state.pumpOn) startPump(vacuum)
-    else if (!on && state.pumpOn) stopPump(vacuum)
+  const boat: BoatAtWork = {
+    spec,
+    state,
+    startedAt: resumed ? null : fromMs,
+    vacuumNow,
+    ventedAt,
+    noteChange,
+    emitEdge: () => emitSample(state.t, true),
   }
-
-  function triggerOf(vacuumPa: number): TrueRun['trigger'] {
-    if (state.flush) return 'flush'
-    const cutInPa = switchPointsAt(spec.switch, state.t).cutInPa
-    return vacuumPa < cutInPa - PA_PER_INHG || ventedAt(state.t) || state.t === fromMs ? 'startup' : 'leak'
-  }
-
-  function startPump(vacuumPa: number): void {
-    const trigger = triggerOf(vacuumPa)
-    if (state.flush) state.flush.startedPump = true
-    const hold = state.openHold
-    if (hold) {
-      state.pending.holds.push({
-        startedAt: hold.startedAt,
-        endedAt: state.t,
-        ending: hold.interrupted ? 'off' : trigger,
-        flushes: hold.flushes,
-        vacuumAtStartPa: hold.vacuumAtStartPa,
-        vacuumAtEndPa: vacuumPa,
-        settledPa: hold.settledPa,
-      })
-    }
-    state.openHold = null
-    state.openRun = { startedAt: state.t, trigger, vacuumAtStartPa: vacuumPa }
-    state.pumpOn = true
-    emitSample(state.t, true)
-  }
-
-  function stopPump(vacuumPa: number): void {
-    if (state.openRun) {
-      state.pending.runs.push({ ...state.openRun, stoppedAt: state.t, vacuumAtStopPa: vacuumPa })
-    }
-    state.openRun = null
-    state.openHold = {
-      startedAt: state.t,
-      vacuumAtStartPa: vacuumPa,
-      flushes: 0,
-      settledPa: null,
-      interrupted: false,
-    }
-    state.pumpOn = false
-    reseat((leak) => leak.reseatsAtRun)
-    emitSample(state.t, true)
-  }
-
-  function reseat(deviationOf: (leak: BoatSpec['leaks'][number]) => number | undefined): void {
-    let changed = false
-    spec.leaks.forEach((leak, index) => {
-      const deviation = deviationOf(leak)
-      const condition = state.conditions[index]
-      if (!deviation || !condition) return
-      condition.seat = Math.exp(deviation * nextNormal(state.random.seats))
-      changed = true
-    })
-    if (changed) noteChange()
-  }
-
-  // --- flushes ------------------------------------------------------------------------------------
 
   function findUpcoming(): OpeningEvent | null {
     while (!upcoming && searchedTo < state.t + SEARCH_AHEAD_MS) {
@@ -203,64 +124,6 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
       searchedTo = found ? found.at : searchedTo + SEARCH_AHEAD_MS - 1
     }
     return upcoming
-  }
-
-  function wet(headKey: string): void {
-    let changed = false
-    spec.leaks.forEach((leak, index) => {
-      const condition = state.conditions[index]
-      if (!leak.wetting || leak.part !== headKey || !condition) return
-      condition.wettedAt = state.t
-      condition.wetSeconds = leak.wetting.wetSeconds * Math.exp(0.3 * nextNormal(state.random.seats))
-      changed = true
-    })
-    if (changed) noteChange()
-  }
-
-  function openBowl(event: OpeningEvent): void {
-    finishFlush()
-    upcoming = null
-    state.eventCursor = event.at
-    const head = spec.habits.heads[event.headIndex]
-    if (!head) return
-    if (event.kind === 'cup') return wet(head.key)
-    const seconds = spec.habits.flushSeconds * (event.kind === 'tap' ? 0.4 : 1)
-    const meanFlow = (head.airLitres * event.airFactor * 101.325) / seconds
-    state.flush = {
-      at: state.t,
-      head: head.key,
-      kind: event.kind,
-      areaM2: areaForFlow(meanFlow),
-      closesAt: state.t + seconds * MS_PER_SECOND,
-      open: true,
-      vacuumBeforePa: vacuumNow(),
-      dropPa: 0,
-      startedPump: false,
-    }
-    if (state.openHold) state.openHold.flushes += 1
-  }
-
-  function closeBowl(): void {
-    const flush = state.flush
-    if (!flush) return
-    flush.open = false
-    const head = spec.habits.heads.find((each) => each.key === flush.head)
-    if (spec.tank.collects && head && flush.kind === 'flush') {
-      state.filledM3 += head.waterLitres / 1000
-      noteChange()
-    }
-    flush.dropPa = flush.vacuumBeforePa - vacuumNow()
-    reseat((leak) => (leak.part === flush.head ? leak.reseatsAtFlush : undefined))
-    wet(flush.head)
-  }
-
-  function finishFlush(): void {
-    const flush = state.flush
-    if (!flush) return
-    if (flush.open) closeBowl()
-    const { at, head, kind, dropPa, startedPump } = flush
-    state.pending.flushes.push({ at, head, kind, dropPa, startedPump })
-    state.flush = null
   }
 
   // --- samples ------------------------------------------------------------------------------------
@@ -305,7 +168,7 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
   }
 
   function advance(): void {
-    operateSwitch()
+    operateSwitch(boat)
     const start = state.t
     const stop = nextStop()
     const wear = wearFactor(spec.pump, start)
@@ -359,34 +222,6 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
     arrive()
   }
 
-  /** Regula falsi (Illinois) for the instant at which the switch's point is passed, to half a millisecond. */
-  function crossing<Attempt extends { duration: number; vacuum: number }>(
-    attempt: (duration: number) => Attempt,
-    past: (vacuum: number) => number,
-    pastAtStart: number,
-    passed: Attempt,
-  ): Attempt {
-    let low = 0
-    let lowValue = pastAtStart
-    let high = passed
-    let highValue = past(passed.vacuum)
-    for (let i = 0; i < 40 && high.duration - low > 0.0005 && highValue > 0.001; i++) {
-      const guess = (low * highValue - high.duration * lowValue) / (highValue - lowValue)
-      const tried = attempt(Math.min(high.duration - 1e-6, Math.max(low + 1e-6, guess)))
-      const value = past(tried.vacuum)
-      if (value >= 0) {
-        high = tried
-        highValue = value
-        lowValue /= 2
-      } else {
-        low = tried.duration
-        lowValue = value
-        highValue /= 2
-      }
-    }
-    return high
-  }
-
   /** What is due at the instant just reached. */
   function arrive(): void {
     const hold = state.openHold
@@ -394,8 +229,8 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
       hold.settledPa = vacuumNow()
     }
     if (state.flush) {
-      if (state.flush.open && state.t >= state.flush.closesAt) closeBowl()
-      else if (!state.flush.open && state.t >= state.flush.closesAt + AFTER_FLUSH_MS) finishFlush()
+      if (state.flush.open && state.t >= state.flush.closesAt) closeBowl(boat)
+      else if (!state.flush.open && state.t >= state.flush.closesAt + AFTER_FLUSH_MS) finishFlush(boat)
     }
     for (const out of spec.tank.pumpOuts) {
       if (state.t !== out.at + out.minutes * 60_000) continue
@@ -404,8 +239,12 @@ export function createEngine(spec: BoatSpec, fromMs: number, resumed: BoatState 
       state.amount *= volumeNow() / before
       noteChange()
     }
-    operateSwitch()
-    if (upcoming && state.t >= upcoming.at) openBowl(upcoming)
+    operateSwitch(boat)
+    if (upcoming && state.t >= upcoming.at) {
+      const event = upcoming
+      upcoming = null
+      openBowl(boat, event)
+    }
     while (sampleTime(state.nextSample) <= state.t + 1e-3) {
       emitSample(state.t, false)
       state.nextSample += 1

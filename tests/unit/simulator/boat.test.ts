@@ -270,6 +270,44 @@ describe('runs and flushes', () => {
     expect(started.slice(1).every((run) => run.trigger === 'leak')).toBe(true)
   })
 
+  it('a pump that does not start leaves the vacuum to go, whatever is flushed', () => {
+    const fails = { from: FROM + HOUR, to: FROM + 4 * HOUR }
+    const spec = clean({
+      pumpFails: [fails],
+      habits: {
+        aboard: 'always',
+        flushesByHour: Array.from({ length: 24 }, () => 0),
+        extraFlushes: [2, 2.5, 3].map((hour) => ({ at: FROM + hour * HOUR, head: 'head-1' })),
+      },
+    })
+    const { truth, samples } = simulateBoat(spec, FROM, FROM + 5 * HOUR)
+    expect(truth.runs).toMatchObject([{ startedAt: fails.to, trigger: 'startup' }])
+    expect(truth.flushes.map((flush) => flush.startedPump)).toEqual([false, false, false])
+    const before = samples.filter((sample) => sample.at < fails.to).at(-1)
+    expect(before?.vacuumPa).toBeLessThan(4 * PA_PER_INHG)
+  })
+
+  it('a check valve seats anew at each run, a bowl valve at each flush of its head alone', () => {
+    const flowsOf = (part: string, seat: { reseatsAtRun?: number; reseatsAtFlush?: number }) => {
+      const spec = clean({
+        leaks: [{ ...leakFor(clean(), 'laminar', 1, part), ...seat }, leakFor(clean(), 'laminar', 1, 'tank')],
+        habits: {
+          aboard: 'always',
+          flushesByHour: Array.from({ length: 24 }, () => 0),
+          extraFlushes: [{ at: FROM + 10.1 * HOUR, head: 'head-1' }],
+        },
+      })
+      const { truth } = simulateBoat(spec, FROM, FROM + 20 * HOUR)
+      return truth.holds.map((hold) => truth.leakFlowByPart(hold.startedAt + 1).get(part) ?? 0)
+    }
+    const differing = (flows: readonly number[]): number =>
+      new Set(flows.map((flow) => flow.toPrecision(9))).size
+    const check = flowsOf('pump', { reseatsAtRun: 0.4 })
+    expect(differing(check)).toBe(check.length)
+    expect(differing(flowsOf('head-1', { reseatsAtFlush: 0.4 }))).toBe(2)
+    expect(differing(flowsOf('head-2', { reseatsAtFlush: 0.4 }))).toBe(1)
+  })
+
   it('a seal wetted by a cup of water holds until it is dry', () => {
     const leak = {
       ...leakFor(clean(), 'laminar', 0.5, 'head-1'),
