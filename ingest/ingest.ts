@@ -43,7 +43,7 @@ export async function ingest(request: Request, receivedAt: Date): Promise<Upload
   const format = formatOf(request.headers.get('content-type'))
   const key = idempotencyKey(request.headers)
   const body = await readBody(request)
-  const records = format === 'senml' ? parseSenml(body, receivedAt.getTime()) : parseCsv(body)
+  const records = format === 'senml' ? await parseSenml(body, receivedAt.getTime()) : parseCsv(body)
   const offsetSeconds = clockOffsetSeconds(request.headers.get('date'), receivedAt.getTime())
   return asIngest((trx) => takeUpload(trx, { sender, format, key, records, offsetSeconds, receivedAt }))
 }

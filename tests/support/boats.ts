@@ -101,13 +101,14 @@ export interface Sent {
   }
 }
 
+const isPack = (body: unknown): body is readonly object[] => Array.isArray(body)
+
 /** Sends an upload to ingest in this process, received at `at`. */
 export async function send(
   boat: Pick<Boat, 'key'>,
-  body: BodyInit | object,
+  body: string | Uint8Array<ArrayBuffer> | ReadableStream | readonly object[],
   options: { at?: Date; headers?: Record<string, string> } = {},
 ): Promise<Sent> {
-  const isRaw = typeof body === 'string' || body instanceof Uint8Array || body instanceof ReadableStream
   const request = new Request('http://boat.example/api/ingest', {
     method: 'POST',
     headers: {
@@ -115,7 +116,9 @@ export async function send(
       'content-type': 'application/senml+json',
       ...options.headers,
     },
-    body: isRaw ? body : JSON.stringify(body),
+    body: isPack(body) ? JSON.stringify(body) : body,
+    // A streamed body is sent while it is made.
+    ...(body instanceof ReadableStream ? { duplex: 'half' } : {}),
   })
   const response = await answering(
     async () => Response.json(await ingest(request, options.at ?? new Date())),
@@ -147,7 +150,7 @@ export function readingsOf(options: {
     const hour = (s / 3600) % 24
     if (random() < (hour > 6 && hour < 22 ? 0.0007 : 0.00005)) vacuum -= 2_500 + 1_500 * random()
     vacuum = Math.max(0, pump ? vacuum + 600 : vacuum - (leakPaPerHour * 5 * (vacuum / 30_000)) / 3600)
-    const before = pump
+    const before: boolean = pump
     if (vacuum < 27_091) pump = true
     if (vacuum > 33_864) pump = false
     if (random() < 0.00003) silentUntil = s + 3_600 * random()
