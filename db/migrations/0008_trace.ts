@@ -24,7 +24,7 @@ const raw = (lo: string, hi: string): string => `
 export async function up(knex: Knex): Promise<void> {
   await knex.raw(`
 -- The record in buckets on multiples of p_step, extremes kept: from hours where a bucket holds whole ones, else from
--- samples. One check for all of it, as with system_samples. Barometer is not kept by the hour.
+-- samples. One check for all of it, as with system_samples.
 create function system_trace(p_system bigint, p_from timestamptz, p_to timestamptz, p_step interval)
 returns table (bucket timestamptz, first_at timestamptz, last_at timestamptz, ${out})
 language plpgsql stable security definer set search_path = public set jit = off as $$
@@ -59,7 +59,8 @@ begin
     union all
     select s.hour, s.hour + an_hour, s.samples,
       (s.vacuum_min_pa - p.shift) * p.gain, (s.vacuum_max_pa - p.shift) * p.gain, (s.vacuum_mean_pa - p.shift) * p.gain,
-      s.air_min_c, s.air_max_c, s.air_mean_c, null, null, null, s.supply_min_v, s.supply_max_v, s.supply_mean_v
+      s.air_min_c, s.air_max_c, s.air_mean_c, s.barometer_min_pa, s.barometer_max_pa,
+      s.barometer_mean_pa, s.supply_min_v, s.supply_max_v, s.supply_mean_v
     from spans p cross join lateral (
       select h.* from sample_hour h
       where h.logger_id = p.logger_id and h.hour >= p.hours_from and h.hour < p.hours_to offset 0) s

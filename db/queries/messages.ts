@@ -10,6 +10,7 @@ export interface MessageRow {
   subject: string | null
   text: string
   html: string | null
+  linkCode: string | null
   queuedAt: Date
   sendAfter: Date
   acceptedAt: Date | null
@@ -20,7 +21,7 @@ export interface MessageRow {
 }
 
 const COLUMNS = `m.id, m.person_id as "personId", p.name as "personName", m.channel, m.address as "to", m.subject,
-  m.body_text as text, m.body_html as html, m.queued_at as "queuedAt", m.send_after as "sendAfter",
+  m.body_text as text, m.body_html as html, m.link_code as "linkCode", m.queued_at as "queuedAt", m.send_after as "sendAfter",
   m.accepted_at as "acceptedAt", m.delivered_at as "deliveredAt", m.failed_at as "failedAt", m.failure,
   array(select distinct e.notice_id::text from message_subject s join notice_event e on e.id = s.notice_event_id
     where s.message_id = m.id) as "noticeIds"`

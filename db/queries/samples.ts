@@ -179,8 +179,8 @@ export async function rollUpHours(trx: Trx, loggerId: string, hoursMs: number[])
      from unnest(?::timestamptz[]) as h (hour)
      cross join lateral (
        select count(*) as samples, min(vacuum_pa), max(vacuum_pa), avg(vacuum_pa), min(air_c), max(air_c), avg(air_c),
-         min(supply_v), max(supply_v), avg(supply_v)
-       from (select vacuum_pa, air_c, supply_v from sample
+         min(supply_v), max(supply_v), avg(supply_v), min(barometer_pa), max(barometer_pa), avg(barometer_pa)
+       from (select vacuum_pa, air_c, supply_v, barometer_pa from sample
              where logger_id = ? and at >= h.hour and at < h.hour + interval '1 hour' order by at) o) s
      where s.samples > 0`,
     [loggerId, hours, loggerId],

@@ -16,7 +16,8 @@ const onWire = (row: MessageRow): Message => ({
   channel: row.channel,
   to: row.to,
   subject: row.subject,
-  text: row.text,
+  // The link acts for its receiver alone.
+  text: row.linkCode === null ? row.text : row.text.replaceAll(row.linkCode, '…'),
   queuedAt: row.queuedAt.toISOString(),
   sendAfter: row.sendAfter.toISOString(),
   acceptedAt: text(row.acceptedAt),
