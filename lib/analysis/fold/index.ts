@@ -1,6 +1,7 @@
 export * from './types'
 export { DERIVER_VERSION } from './constants'
-export { initialState, type FoldState } from './state'
+export { initialState } from './initial-state'
+export type { FoldState } from './state'
 export { step } from './step'
 export { serialiseState, parseState } from './serialise'
 export { orderItems } from './order'

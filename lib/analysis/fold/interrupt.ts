@@ -1,7 +1,7 @@
 import { settleFall } from './fall'
 import { pushHold } from './hold'
 import { closeLeg } from './leg'
-import { interruptRun } from './run'
+import { interruptRun } from './run-stop'
 import type { FoldState } from './state'
 import type { Instant, Row } from './types'
 

@@ -1,4 +1,5 @@
-import { initialState, type FoldState } from './state'
+import { initialState } from './initial-state'
+import type { FoldState } from './state'
 
 /** Plain data with every object's keys in alphabetical order, so that equal states have equal text. */
 function ordered(value: unknown): unknown {

@@ -1,4 +1,3 @@
-import { DERIVER_VERSION, INHG } from './constants'
 import type { FaultKind, FoldSettings, Instant, StatementValue } from './types'
 
 /** Last value of each channel and when it came; `null` = none, or taken away by a gap or another logger. */
@@ -196,69 +195,4 @@ export interface FoldState {
   rings: Rings
   fault: FaultState
   checkpoint: { block: number | null; at: Instant | null; due: boolean }
-}
-
-/** The fold before anything happened. */
-export function initialState(): FoldState {
-  return {
-    deriverVersion: DERIVER_VERSION,
-    at: null,
-    sampleAt: null,
-    spacingMs: 0,
-    rhythmAt: null,
-    recordsEdges: false,
-    settings: { kind: 'pass-through', cutOutPa: null, cutInPa: null },
-    fitting: null,
-    statement: null,
-    channels: {
-      vacuumPa: null,
-      vacuumAt: null,
-      pumpOn: null,
-      pumpAt: null,
-      airC: null,
-      airAt: null,
-      laggedAirC: [null, null],
-      barometerPa: null,
-      barometerAt: null,
-      supplyV: null,
-      supplyAt: null,
-    },
-    sigmaPa: 0.005 * INHG,
-    stepPa: 0,
-    slopePaPerSecond: 0,
-    lastFlushAt: null,
-    lastGap: null,
-    lowSince: null,
-    offSince: null,
-    hold: null,
-    ended: null,
-    run: null,
-    leg: null,
-    fall: null,
-    recent: [],
-    turn: null,
-    rings: {
-      cutOutPa: [],
-      cutInPa: [],
-      settledPa: [],
-      rechargePaPerSecond: [],
-      runSeconds: [],
-      lowStartPa: [],
-      highStartPa: [],
-      longRunSeconds: [],
-      sparseStartPa: [],
-    },
-    fault: {
-      kind: null,
-      startedAt: null,
-      detail: '',
-      samePa: null,
-      sameSince: null,
-      sameRuns: 0,
-      zeroSince: null,
-      zeroLowPa: 0,
-      zeroHighPa: 0,
-    },
-    checkpoint: { block: null, at: null, due: false },
-  }
 }
