@@ -9,8 +9,9 @@ import { reasonFor, SECOND_LEAK, WHOLE_FIRST, WHOLE_LONGER } from './words'
 
 /** The likeliest part (or parts that no test separates) is named from here on. */
 const DECIDED = 0.98
-/** Under this share of the flow for the one suspected, a second leak is looked for. */
+/** Under this share of the flow for the one suspected, and surely under that, a second leak is looked for. */
 const EXPLAINED = 0.7
+const EXPLAINED_AT_MOST = 0.9
 /** A flow is known when its interval is narrower than this share of the boat's. */
 const KNOWN_WITHIN = 0.25
 /** A test is not made again once it tells this share of the boat's flow from nought. */
@@ -83,8 +84,10 @@ function searchWeights(state: NextTestState): Search | null {
   const top = ranked[0]
   if (top === undefined) return null
   if (top.probability < DECIDED) return { weights: probabilities, second: false }
-  if (sum(top.group, (key) => shares.get(key)?.share ?? 0) >= EXPLAINED) return null
   const scale = flowScale(state.readings)
+  const explained = sum(top.group, (key) => shares.get(key)?.share ?? 0)
+  const most = Math.max(...top.group.map((key) => shares.get(key)?.high ?? Infinity))
+  if (explained >= EXPLAINED || most > EXPLAINED_AT_MOST * scale) return null
   const open = state.shares.filter((share) => (share.high ?? Infinity) - share.low > KNOWN_WITHIN * scale)
   const total = open.reduce((all, share) => all + share.flowPaM3PerS, 0)
   if (!(total > 0)) return null

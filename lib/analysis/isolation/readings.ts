@@ -19,7 +19,7 @@ export type Reading = {
 /** Stopwatch and eye, s. */
 const TIMING_SIGMA_SECONDS = 1
 /** Volumes, fittings and all else that is not the gauge, relative (judged). */
-const FLOOR = 0.01
+const FLOOR = 0.03
 
 /** Gas volume of some parts, m³. Throws a RangeError for a key that is not a part, or where there is no gas. */
 export function volumeOf(parts: readonly IsolationPart[], keys: Iterable<string>): number {
@@ -36,7 +36,7 @@ export function volumeOf(parts: readonly IsolationPart[], keys: Iterable<string>
 /**
  * Tests as equations V(S)·rate = sum of flows, corrected for temperature and barometer where measured.
  * A leak slows as the vacuum falls, by how much depends on its kind: readings are brought to the middle
- * vacuum of all tests by half of what a laminar leak would change, that half being also their doubt.
+ * vacuum of all tests by half of what a laminar leak would change, the rest being doubt.
  * Throws a RangeError for an impossible test.
  */
 export function readTests(parts: readonly IsolationPart[], tests: readonly IsolationTest[]): Reading[] {
@@ -54,15 +54,15 @@ function readTest(parts: readonly IsolationPart[], test: IsolationTest, referenc
   const resolutionPa = test.resolutionPa ?? GAUGE_RESOLUTION_PA.digital
   const isBound = test.endPa <= resolutionPa
   const rise = correctedRisePa(test)
-  const scale = isBound ? { factor: 1, doubt: 0 } : vacuumScale(middleVacuumPa(test), referencePa)
-  const flow = (volumeM3 * rise.pa) / test.seconds / scale.factor
+  const scale = isBound ? { factor: 1, doubt: 0 } : vacuumScale(test, referencePa)
+  const flow = ((volumeM3 * rise.pa) / test.seconds) * scale.factor
   // Two readings, each off by up to half a step either way.
   const gaugeSigma = (volumeM3 * Math.hypot(resolutionPa / Math.sqrt(6), rise.sigmaPa)) / test.seconds
   const relative = Math.hypot(FLOOR, scale.doubt, TIMING_SIGMA_SECONDS / test.seconds)
   return {
     keys,
     flow,
-    sigma: Math.hypot(gaugeSigma, relative * flow),
+    sigma: Math.hypot(scale.factor * gaugeSigma, relative * flow),
     isBound,
     volumeM3,
     resolutionPa,
@@ -88,8 +88,17 @@ function correctedRisePa(test: IsolationTest): { pa: number; sigmaPa: number } {
   return { pa: rise(0.5), sigmaPa: Math.abs(rise(1) - rise(0)) / Math.sqrt(12) }
 }
 
-function vacuumScale(vacuumPa: number, referencePa: number): { factor: number; doubt: number } {
+/**
+ * What a test's mean flow is multiplied by to stand for the middle vacuum of all tests, and how doubtful that
+ * is: anything from one (a leak that does not slow) to a laminar leak's, whose mean is over a vacuum that
+ * decays by its own share. A test that nearly fell to nought comes near to a bound.
+ */
+function vacuumScale(test: IsolationTest, referencePa: number): { factor: number; doubt: number } {
   const drive = (pa: number) => laminarDrive(STANDARD_PRESSURE_PA, STANDARD_PRESSURE_PA - pa)
-  const laminar = referencePa > 0 ? drive(vacuumPa) / drive(referencePa) : 1
-  return { factor: (1 + laminar) / 2, doubt: Math.abs(1 - laminar) / Math.sqrt(12) }
+  const { startPa, endPa } = test
+  const falls = endPa > 0 && endPa < startPa
+  const decayingPa = falls ? (startPa - endPa) / Math.log(startPa / endPa) : middleVacuumPa(test)
+  const laminar = referencePa > 0 ? drive(referencePa) / drive(decayingPa) : 1
+  const factor = (1 + laminar) / 2
+  return { factor, doubt: Math.abs(laminar - 1) / Math.sqrt(12) / factor }
 }
