@@ -33,6 +33,8 @@ export interface FleetSource {
  * system_state, the outlook of the night that is not yet over, open notices, the next planned visit.
  */
 export async function readFleet(trx: Trx, at: Date, vesselId: string | null): Promise<FleetSource[]> {
+  // Policies hide from the planner how many rows there are: it takes a fleet for ten boats, and loops.
+  await trx.raw('set local enable_nestloop = off')
   const { rows } = await trx.raw<{ rows: FleetSource[] }>(
     `with offsets as (
        select time_zone, extract(epoch from (cast(:at as timestamptz) at time zone time_zone)
@@ -51,8 +53,9 @@ export async function readFleet(trx: Trx, at: Date, vesselId: string | null): Pr
      ), open_notices as (
        select system_id, array_agg(kind order by opened_at) as kinds from notice where closed_at is null group by system_id
      ), planned as (
-       select vessel_id, system_id, min(planned_for) as at from visit
-       where status = 'planned' and planned_for is not null group by vessel_id, system_id
+       select p.id as system_id, min(t.planned_for) as at from visit t
+       join system p on p.vessel_id = t.vessel_id and (t.system_id is null or t.system_id = p.id)
+       where t.status = 'planned' and t.planned_for is not null group by p.id
      )
      select v.id as "vesselId", s.id as "systemId", v.name, s.name as "systemName", v.harbour, v.berth,
        v.time_zone as "timeZone", o.seconds as "utcOffsetSeconds",
@@ -62,8 +65,7 @@ export async function readFleet(trx: Trx, at: Date, vesselId: string | null): Pr
        coalesce(g.silence_seconds, 21600) as "silenceSeconds", t.statement,
        n.chance, n.chance_if_flushed_last as "chanceIfFlushedLast", n.expected_runs as "expectedRuns",
        n.system_id is not null as "hasOutlook", coalesce(k.kinds, '{}') as "openNotices",
-       (select min(p.at) from planned p where p.vessel_id = v.id and (p.system_id is null or p.system_id = s.id))
-         as "nextVisitAt"
+       p.at as "nextVisitAt"
      from vessel v
      join system s on s.vessel_id = v.id
      join offsets o on o.time_zone = v.time_zone
@@ -72,6 +74,7 @@ export async function readFleet(trx: Trx, at: Date, vesselId: string | null): Pr
      left join said t on t.system_id = s.id
      left join nights n on n.system_id = s.id
      left join open_notices k on k.system_id = s.id
+     left join planned p on p.system_id = s.id
      where cast(:vessel as bigint) is null or v.id = :vessel`,
     { at, vessel: vesselId },
   )
