@@ -56,8 +56,8 @@ export function exampleFields(units: UnitChoice): LeakDownFields {
   }
 }
 
-/** Four figures at most, without trailing noughts. */
-const shortest = (value: number): string => String(Number(value.toPrecision(4)))
+/** Five figures at most, so that going to another unit and back gives what was typed; no trailing noughts. */
+const shortest = (value: number): string => String(Number(value.toPrecision(5)))
 
 /** The same fields in other units, so that a change of unit loses nothing that was typed. */
 export function convertFields(fields: LeakDownFields, from: UnitChoice, to: UnitChoice): LeakDownFields {

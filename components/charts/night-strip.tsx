@@ -58,7 +58,7 @@ export function StripBody({
   const [from, to] = [onStrip(night.quiet[0]), onStrip(night.quiet[1])]
   const within = (minute: number) => inQuiet(minute, night.quiet)
   const outside = (minute: number) => !within(minute)
-  const top = Math.max(1, height * 0.07)
+  const top = Math.max(1, Math.round(height * 0.7) / 10)
   const run = (minutes: number[]) => tickPath(minutes, top, height - top)
   const flush = (minutes: number[]) => tickPath(minutes, height * 0.6, height - top)
   const ink = calm ? 'calm' : 'run'

@@ -17,7 +17,9 @@ export const SORT_WORDS: Record<Sort, string> = {
 }
 
 const collator = new Intl.Collator('en', { numeric: true, sensitivity: 'base' })
-const byName = (a: FleetBoat, b: FleetBoat): number => collator.compare(rowName(a), rowName(b))
+function byName(a: FleetBoat, b: FleetBoat): number {
+  return collator.compare(rowName(a), rowName(b)) || Number(a.systemId) - Number(b.systemId)
+}
 
 const SEVERITY = new Map(STATES.map((state, index) => [state, index]))
 const severity = (row: FleetBoat): number => SEVERITY.get(row.state) ?? STATES.length

@@ -10,7 +10,9 @@ export function safeNext(wanted: string | string[] | undefined): string | null {
     const base = 'http://middlewatch.invalid'
     const url = new URL(wanted, base)
     // next-auth hands over a whole address of ours; only its path is kept.
-    const path = wanted.startsWith('/') ? url : new URL(new URL(wanted).pathname, base)
+    const whole = /^https?:\/\//.test(wanted)
+    if (!whole && !wanted.startsWith('/')) return null
+    const path = whole ? new URL(url.pathname + url.search, base) : url
     return path.origin === base && !path.pathname.startsWith('//') && path.pathname !== '/sign-in'
       ? `${path.pathname}${path.search}${path.hash}`
       : null

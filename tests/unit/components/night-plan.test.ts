@@ -1,0 +1,64 @@
+import { describe, expect, it } from 'vitest'
+import { expectedMinutes, minuteOf, runsToSay, tonightOf } from '@/components/tonight/night-plan'
+import { clockChanges } from '@/components/tonight/use-night-offsets'
+import { hold, outlook, summary } from './fixtures'
+
+const QUIET = [240, 780] as const
+
+describe('expected runs on tonight’s strip', () => {
+  it('counts minutes from the start of the night, so that no zone is needed', () => {
+    expect(minuteOf('2026-12-02T02:00:00Z', outlook(), QUIET)).toBe(240)
+    expect(minuteOf('2026-12-02T03:55:00Z', outlook(), QUIET)).toBe(355)
+  })
+  it('puts one every hold time after the first, within the quiet hours', () => {
+    expect(expectedMinutes(outlook(), summary(), QUIET)).toEqual([355, 439, 523, 607, 691, 775])
+  })
+  it('draws none where a run is not likely, and none without an outlook', () => {
+    expect(expectedMinutes(outlook({ chanceIfFlushedLast: 0.49 }), summary(), QUIET)).toEqual([])
+    expect(expectedMinutes(null, summary(), QUIET)).toEqual([])
+  })
+  it('draws one alone where the hold time is not known', () => {
+    expect(expectedMinutes(outlook(), summary({ holdTime: null }), QUIET)).toEqual([355])
+  })
+  it('never draws more than the strip can show', () => {
+    const many = expectedMinutes(outlook({ expectedRuns: 5000 }), summary({ holdTime: hold(0.02) }), QUIET)
+    expect(many.length).toBeLessThanOrEqual(200)
+  })
+  it('says at least one run where one is likely', () => {
+    expect(runsToSay(outlook({ expectedRuns: 0.3 }))).toBe(1)
+  })
+})
+
+describe('tonight among the listed nights', () => {
+  const night = (date: string) => ({
+    date,
+    quiet: [240, 780] as [number, number],
+    runs: [300],
+    flushes: [],
+    more: 0,
+  })
+  it('is the last one when it has begun', () => {
+    expect(tonightOf([night('2026-11-30'), night('2026-12-01')], outlook(), -14_400)?.runs).toEqual([300])
+  })
+  it('is empty, with the same quiet hours, while the list still ends with the night before', () => {
+    expect(tonightOf([night('2026-11-30')], outlook(), -14_400)).toEqual({
+      date: '2026-12-01',
+      quiet: [240, 780],
+      runs: [],
+      flushes: [],
+      more: 0,
+    })
+  })
+  it('is nothing when nothing was heard', () => {
+    expect(tonightOf([], outlook(), 0)).toBeNull()
+  })
+})
+
+describe('a night whose clock changes', () => {
+  const quiet = { start: '22:00', end: '07:00' }
+  it('is told by what its end reads', () => {
+    const usual = { from: '2026-12-02T02:00:00Z', to: '2026-12-02T11:00:00Z', timeZone: '', hours: 9 }
+    expect(clockChanges(usual, quiet, -4 * 3600)).toBe(false)
+    expect(clockChanges({ ...usual, to: '2026-12-02T12:00:00Z', hours: 10 }, quiet, -4 * 3600)).toBe(true)
+  })
+})
