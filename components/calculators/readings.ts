@@ -56,7 +56,7 @@ export function exampleFields(units: UnitChoice): LeakDownFields {
   }
 }
 
-/** Five figures at most, so that going to another unit and back gives what was typed; no trailing noughts. */
+/** Five figures at most, so that going to another unit and back moves no gauge; no trailing noughts. */
 const shortest = (value: number): string => String(Number(value.toPrecision(5)))
 
 /** The same fields in other units, so that a change of unit loses nothing that was typed. */
