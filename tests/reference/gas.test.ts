@@ -23,6 +23,14 @@ describe('ISO 2533:1975 / ICAO Doc 7488 standard atmosphere (constants: value fr
   })
 })
 
+test('ISO 2533:1975: geometric and geopotential altitude differ by 12.6 Pa at 3000 m, under 2 Pa where boats are', () => {
+  const geopotential = (geometricM: number) => (6_356_766 * geometricM) / (6_356_766 + geometricM)
+  const difference = (altitudeM: number) =>
+    gas.standardPressurePa(geopotential(altitudeM)) - gas.standardPressurePa(altitudeM)
+  expect(difference(3000)).toBeCloseTo(12.618, 2)
+  expect(difference(1000)).toBeLessThan(2)
+})
+
 describe('ideal gas', () => {
   test('OpenStax College Physics ch. 13 problem 22: a tyre cooled from 35 to −40 °C', () => {
     const gaugePa = gas.pressureAfterTemperaturePa(250000 + 101325, 35, -40) - 101325

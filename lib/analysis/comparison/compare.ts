@@ -1,5 +1,11 @@
-import { censoredRatio, hodgesLehmannRatio, mannWhitney, type Survival } from '@/lib/analysis/statistics'
-import { holdTimeOf, holdTimes, periodFigures, signsOf } from './figures'
+import {
+  censoredRatio,
+  hodgesLehmannRatio,
+  mannWhitney,
+  mean,
+  type Survival,
+} from '@/lib/analysis/statistics'
+import { holdTimeOf, holdTimes, periodFigures, quietHolds, signsOf } from './figures'
 import type { Comparison, ComparedPeriod } from './types'
 import { hoursNeededFor, type Interval, judgeRepair, type Level, otherCause } from './verdict'
 
@@ -25,7 +31,8 @@ export function compareBeforeAfter(
   const enough = Math.min(timesBefore.length, timesAfter.length) >= FEWEST
   const level = levelAfter(timesBefore, timesAfter, change?.ratio ?? null)
   const verdict = change === null || !enough ? null : judgeRepair(change.ratio, level, limitSeconds, because)
-  const expectedSeconds = figures.after.holdTimeSeconds ?? figures.before.holdTimeSeconds ?? limitSeconds
+  const expectedSeconds =
+    meanLength(after) ?? Math.min(figures.before.holdTimeSeconds ?? limitSeconds, limitSeconds)
   return {
     ...figures,
     ratio: change?.ratio ?? null,
@@ -52,6 +59,11 @@ function changeOf(
   if (censored === null) return null
   const { value, low, high, isBound, pValue } = censored
   return { ratio: { value, low, high: isBound ? null : high }, pValue }
+}
+
+/** How long holds are left alone in a period, by leak or by people. */
+function meanLength(period: ComparedPeriod): number | null {
+  return mean(quietHolds(period).map((hold) => (hold.endedAt - hold.startedAt) / 1000))
 }
 
 /**

@@ -7,7 +7,7 @@ const DAY_SECONDS = 86_400
 /** Holds beyond this many add nothing but time. */
 const MOST_HOLDS = 250
 
-/** The holds that are compared: neither interrupted nor worked on, the newest first dropped last. */
+/** The holds that are compared: neither interrupted nor worked on, in order of time, the newest `MOST_HOLDS`. */
 export function quietHolds(period: ComparedPeriod): ComparedHold[] {
   return period.holds
     .filter(
