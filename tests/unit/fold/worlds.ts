@@ -64,7 +64,8 @@ export const boatItems: fc.Arbitrary<FoldItem[]> = fc
       logger: { ...boat.logger, silent: [span(FROM + world.gap[0] * HOUR, world.gap[1])] },
       breakerOff: world.breaker ? [span(FROM + world.breaker[0] * HOUR, world.breaker[1])] : [],
     }
-    const { samples } = simulateBoat(spec, FROM, FROM + world.hours * HOUR)
+    const hours = world.intervalSeconds < 20 ? Math.min(world.hours, 8) : world.hours
+    const { samples } = simulateBoat(spec, FROM, FROM + hours * HOUR)
     const facts: Fact[] = [
       fitting(FROM, world.intervalSeconds, world.logger !== 'vacuum-only', world.logger !== 'pump-only'),
     ]
