@@ -193,6 +193,12 @@ function trimmed(batch: Batch): Batch {
   }
 }
 
+/** First and last time of a batch that is not empty, epoch milliseconds. */
+export const endsOf = ({ at, count }: Batch): { firstMs: number; lastMs: number } => ({
+  firstMs: at[0] ?? 0,
+  lastMs: at[count - 1] ?? 0,
+})
+
 /** The names (by position) that hold, between `:` or `/`, a word which may be a serial; the channel's word is not one. */
 export function possibleSerials(names: readonly string[]): Map<string, number[]> {
   const found = new Map<string, number[]>()

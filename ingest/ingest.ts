@@ -5,17 +5,17 @@ import {
   otherSerials,
   type IngestLogger,
 } from '@/db/queries/ingest-loggers'
-import { limitLockWait, lockStates, noteSystemHeard } from '@/db/queries/system-state'
+import { limitLockWait, noteSystemHeard } from '@/db/queries/system-state'
 import { answerByKey, insertUpload, lastShiftSeconds, nextUploadId } from '@/db/queries/uploads'
 import { asIngest, type Trx } from '@/db/roles'
-import { check, possibleSerials, type Checked } from '@/ingest/check'
+import { check, endsOf, possibleSerials, type Checked } from '@/ingest/check'
 import { clockOffsetSeconds, shiftSeconds } from '@/ingest/clock'
 import { parseCsv } from '@/ingest/parse-csv'
 import { parseSenml } from '@/ingest/parse-senml'
 import { formatOf, readBody, type Format } from '@/ingest/read-body'
 import type { Reason, RecordColumns } from '@/ingest/records'
 import { store } from '@/ingest/store'
-import { takeIn } from '@/ingest/take-in'
+import { lockReached, takeIn } from '@/ingest/take-in'
 import { refuseRetired, whoSends } from '@/ingest/who-sends'
 import { Problem } from '@/lib/problem'
 
@@ -94,13 +94,7 @@ async function takeUpload(trx: Trx, upload: Upload): Promise<UploadAnswer> {
   const { batch } = checked
   if (batch.count === 0) throw nothingUsable(checked)
 
-  const firstMs = batch.at[0] ?? 0
-  const lastMs = batch.at[batch.count - 1] ?? 0
-  const touched = fittings.filter(({ fromMs, toMs }) => fromMs <= lastMs && toMs > firstMs)
-  const states = await lockStates(
-    trx,
-    touched.map(({ systemId }) => systemId),
-  )
+  const reached = await lockReached(trx, fittings, batch)
   const id = await nextUploadId(trx)
   const stored = await store(trx, logger.id, id, batch)
   await noteHeard(trx, logger.id, receivedAt, offsetSeconds)
@@ -125,17 +119,15 @@ async function takeUpload(trx: Trx, upload: Upload): Promise<UploadAnswer> {
     receivedAt,
     idempotencyKey: key,
     format,
-    firstMs,
-    lastMs,
+    ...endsOf(batch),
     ...answer.samples,
     clockOffsetSeconds: offsetSeconds,
     shiftSeconds: shift,
     answer,
     importedBy: null,
   })
-  for (const state of states) {
+  for (const { state, spans } of reached) {
     await noteSystemHeard(trx, state.systemId, receivedAt)
-    const spans = touched.filter(({ systemId }) => systemId === state.systemId)
     await takeIn(trx, state, spans, stored.changed, receivedAt)
   }
   return answer

@@ -1,11 +1,12 @@
+import { checkpointTimesAfter } from '@/db/queries/derived'
 import { clearRefold, limitLockWait, lockStates, systemsToCatchUp } from '@/db/queries/system-state'
 import type { Trx } from '@/db/roles'
 import { DERIVER_VERSION } from '@/lib/analysis/fold'
 import { derive, rebuild, type Derived } from '@/ingest/derive'
 import { settle } from '@/ingest/take-in'
 
-/** A change further back than this is left to the worker: a request should not fold a year. */
-const INLINE_MS = 60 * 86_400_000
+/** Over this (some sixty days of record) a change is left to the worker: a request should not fold a year. */
+const INLINE_CHECKPOINTS = 240
 
 /**
  * Takes a changed fact (settings, fitting, statement, calibration) into a system's rows, in the transaction that
@@ -20,7 +21,7 @@ export async function rederive(trx: Trx, systemId: string, since: Date, now: Dat
   if (locked === undefined) return
   const fromMs = Math.min(since.getTime(), locked.refoldFromMs ?? Infinity)
   if (locked.headAtMs === null && locked.refoldFromMs !== null) await clearRefold(trx, systemId)
-  if (locked.headAtMs !== null && locked.headAtMs - fromMs > INLINE_MS) return
+  if ((await checkpointTimesAfter(trx, systemId, fromMs)).length > INLINE_CHECKPOINTS) return
   await settle(trx, locked, { fromMs, toMs: Math.max(fromMs, locked.headAtMs ?? fromMs) }, now)
 }
 

@@ -36,8 +36,15 @@ interface Fates {
 /**
  * Stores a batch beside what is there: the first value of a channel stands, missing ones are filled in, and a
  * logger's own sample takes the place of an import's. The logger must be locked by this transaction.
+ * @param how.onlyNewTimes true for what a person imports: times that are stored already stay as they are.
  */
-export async function store(trx: Trx, loggerId: string, uploadId: string, batch: Batch): Promise<Stored> {
+export async function store(
+  trx: Trx,
+  loggerId: string,
+  uploadId: string,
+  batch: Batch,
+  how: { onlyNewTimes: boolean } = { onlyNewTimes: false },
+): Promise<Stored> {
   const fates: Fates = {
     add: [],
     fill: [],
@@ -49,7 +56,7 @@ export async function store(trx: Trx, loggerId: string, uploadId: string, batch:
   }
   for (let from = 0; from < batch.count; from += COPY_ABOVE) {
     const to = Math.min(from + COPY_ABOVE, batch.count)
-    judge(batch, from, to, await thoseStored(trx, loggerId, batch, from, to), fates)
+    judge(batch, from, to, await thoseStored(trx, loggerId, batch, from, to), fates, how.onlyNewTimes)
   }
   await insertSamples(trx, loggerId, uploadId, pick(batch, fates.add))
   await fillSamples(trx, loggerId, pick(batch, fates.fill))
@@ -73,7 +80,14 @@ async function thoseStored(
   return storedAt(trx, loggerId, times)
 }
 
-function judge(batch: Batch, from: number, to: number, there: StoredSample[], fates: Fates): void {
+function judge(
+  batch: Batch,
+  from: number,
+  to: number,
+  there: StoredSample[],
+  fates: Fates,
+  onlyNewTimes: boolean,
+): void {
   let next = 0
   for (let i = from; i < to; i += 1) {
     const old = there[next]
@@ -85,6 +99,10 @@ function judge(batch: Batch, from: number, to: number, there: StoredSample[], fa
     }
     next += 1
     const { differs, fills } = compare(batch, i, old)
+    if (onlyNewTimes) {
+      count(fates, differs || batch.conflicting[i] === 1, false)
+      continue
+    }
     if (old.imported) {
       fates.replace.push(i)
       // An import's sample that said the same changes hands, and no row changes by it.

@@ -1,12 +1,32 @@
+import type { LoggerFitting } from '@/db/queries/ingest-loggers'
 import { refreshDays } from '@/db/queries/system-days'
-import type { SystemState } from '@/db/queries/system-state'
+import { lockStates, type SystemState } from '@/db/queries/system-state'
 import type { Trx } from '@/db/roles'
+import { endsOf, type Batch } from '@/ingest/check'
 import { derive, type Change, type Derived } from '@/ingest/derive'
 import { judge } from '@/ingest/judge'
 
 interface Span {
   fromMs: number
   toMs: number
+}
+
+/** The systems that a batch of a logger's samples reaches, locked, with the spans of its fittings there. */
+export async function lockReached(
+  trx: Trx,
+  fittings: readonly LoggerFitting[],
+  batch: Batch,
+): Promise<{ state: SystemState; spans: LoggerFitting[] }[]> {
+  const { firstMs, lastMs } = endsOf(batch)
+  const reached = fittings.filter(({ fromMs, toMs }) => fromMs <= lastMs && toMs > firstMs)
+  const states = await lockStates(
+    trx,
+    reached.map(({ systemId }) => systemId),
+  )
+  return states.map((state) => ({
+    state,
+    spans: reached.filter(({ systemId }) => systemId === state.systemId),
+  }))
 }
 
 /**

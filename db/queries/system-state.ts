@@ -100,12 +100,15 @@ export async function markForRebuild(trx: Trx, systemId: string): Promise<void> 
   await trx.raw('update system_state set rebuild_wanted = true where system_id = ?', [systemId])
 }
 
-/** Systems whose rows do not follow from samples and facts: marked, or derived by another version than this one. */
+/**
+ * Systems whose rows do not follow from samples and facts: marked, or derived by another version than this one.
+ * In no order, so that one which fails does not stand before the others.
+ */
 export async function systemsToCatchUp(trx: Trx, deriverVersion: number, limit: number): Promise<string[]> {
   const { rows } = await trx.raw<{ rows: { system_id: string }[] }>(
     `select system_id from system_state
      where rebuild_wanted or refold_from is not null or (head is not null and deriver_version <> ?)
-     order by system_id limit ?`,
+     order by random() limit ?`,
     [deriverVersion, limit],
   )
   return rows.map((row) => row.system_id)

@@ -100,3 +100,36 @@ export async function lastShiftSeconds(trx: Trx, loggerId: string): Promise<numb
   )
   return rows[0]?.shift_seconds ?? null
 }
+
+export interface ImportRow {
+  id: string
+  loggerId: string
+  firstMs: number
+  lastMs: number
+  undoneAt: Date | null
+}
+
+/** A person's import, locked; null when there is none of this id. */
+export async function lockImport(trx: Trx, uploadId: string): Promise<ImportRow | null> {
+  const { rows } = await trx.raw<{
+    rows: { id: number; logger_id: number; first_at: Date; last_at: Date; undone_at: Date | null }[]
+  }>(
+    `select id, logger_id, first_at, last_at, undone_at from upload
+     where id = ? and format = 'import' for no key update`,
+    [uploadId],
+  )
+  const row = rows[0]
+  return row === undefined
+    ? null
+    : {
+        id: String(row.id),
+        loggerId: String(row.logger_id),
+        firstMs: row.first_at.getTime(),
+        lastMs: row.last_at.getTime(),
+        undoneAt: row.undone_at,
+      }
+}
+
+export async function markUndone(trx: Trx, uploadId: string, at: Date): Promise<void> {
+  await trx.raw('update upload set undone_at = ? where id = ?', [at, uploadId])
+}
