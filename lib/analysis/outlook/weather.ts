@@ -1,14 +1,15 @@
 import { LAG_SECONDS, type Instant } from '../fold/types'
 import { lagTemperature, type TemperaturePoint } from '../gas'
 import type { GasResponse } from '../fit'
+import { theilSen } from '../statistics'
 import type { AirPoint } from './types'
 
 const DAY_MS = 86_400_000
 
 /**
  * How fast the weather will let the vacuum fall, Pa/s, in each step from `from` on: yesterday's air at the same
- * hours, shifted to meet the air now, through the gas's response to it. The barometer is taken as steady. Without
- * a day of air: noughts.
+ * hours, shifted to meet the air now, through the gas's response to it; and the barometer, whose tendency of the last
+ * hours is taken to die away over some more. What is not measured is taken as steady.
  */
 export function weatherRates(
   air: readonly AirPoint[],
@@ -17,7 +18,7 @@ export function weatherRates(
   stepSeconds: number,
   steps: number,
 ): Float64Array {
-  const rates = new Float64Array(steps)
+  const rates = barometerRates(air, from, stepSeconds, steps)
   const known = air.flatMap((point) => (point.airC === null ? [] : [{ at: point.at, airC: point.airC }]))
   const first = known[0]
   const last = known.at(-1)
@@ -39,6 +40,30 @@ export function weatherRates(
       const change = (curve[k + 1] ?? 0) - (curve[k] ?? 0)
       rates[k] = (rates[k] ?? 0) + ((response[j] ?? 0) * change) / stepSeconds
     })
+  }
+  return rates
+}
+
+const TENDENCY_MS = 6 * 3_600_000
+const TENDENCY_LASTS_SECONDS = 6 * 3_600
+/** How much of a tendency goes on at all (judged from simulated weather). */
+const TENDENCY_KEPT = 0.7
+
+/** A rising barometer deepens the vacuum, Pa/s in each step (negative: it holds longer). */
+function barometerRates(
+  air: readonly AirPoint[],
+  from: Instant,
+  stepSeconds: number,
+  steps: number,
+): Float64Array {
+  const rates = new Float64Array(steps)
+  const points = air.flatMap(({ at, barometerPa }) =>
+    barometerPa === null || at < from - TENDENCY_MS || at > from ? [] : [{ x: at / 1000, y: barometerPa }],
+  )
+  const trend = points.length < 4 ? null : theilSen(points)
+  if (trend === null) return rates
+  for (let k = 0; k < steps; k += 1) {
+    rates[k] = -TENDENCY_KEPT * trend.slope * Math.exp((-(k + 0.5) * stepSeconds) / TENDENCY_LASTS_SECONDS)
   }
   return rates
 }
