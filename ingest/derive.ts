@@ -38,41 +38,51 @@ export interface Derived {
   span: { fromMs: Instant; toMs: Instant } | null
 }
 
+/** Over this (some sixty days of record) a changed fact is left to the worker: a request should not fold a year. */
+const INLINE_CHECKPOINTS = 240
+
 /**
  * Takes a change of the input into a system's rows, checkpoints and head: folds on from the head when everything
  * changed lies after it, else from the last checkpoint before the change to the first after it whose state comes
  * out equal. Marks of changed facts are taken in along the way.
  * @param locked the system's state row, locked by this transaction.
+ * @param patient true takes in marks however far they reach back; else those that reach too far stay marked.
  */
-export async function derive(trx: Trx, locked: SystemState, change: Change | null): Promise<Derived> {
-  if (locked.rebuildWanted || (locked.head !== null && locked.deriverVersion !== DERIVER_VERSION)) {
+export async function derive(
+  trx: Trx,
+  locked: SystemState,
+  change: Change | null,
+  patient = false,
+): Promise<Derived> {
+  const { systemId, refoldFromMs: mark } = locked
+  if (locked.rebuildWanted || isOfAnotherVersion(locked)) {
     // Rows of another version must not be mixed with new ones: the worker derives the system anew.
-    await markForRebuild(trx, locked.systemId)
-    return { items: 0, span: null }
+    await markForRebuild(trx, systemId)
+    return NOTHING
   }
-  const whole = withMark(locked, change)
-  if (whole === null) return { items: 0, span: null }
-  return refold(trx, locked, whole)
+  if (mark === null) return change === null ? NOTHING : refold(trx, locked, change, false)
+  if (!patient && (await checkpointTimesAfter(trx, systemId, mark)).length > INLINE_CHECKPOINTS)
+    return change === null ? NOTHING : refold(trx, locked, change, true)
+  // How far a fact reaches is not known, so what was changed reaches to the head.
+  const fromMs = Math.min(mark, change?.fromMs ?? Infinity)
+  const toMs = Math.max(locked.headAtMs ?? -Infinity, change?.toMs ?? -Infinity)
+  return refold(trx, locked, { fromMs, toMs }, false)
 }
+
+const NOTHING: Derived = { items: 0, span: null }
+
+/** True when the head was folded by a deriver that would have made other rows. */
+export const isOfAnotherVersion = (state: SystemState): boolean =>
+  state.head !== null && state.deriverVersion !== DERIVER_VERSION
 
 /** Derives a system anew from its seal, or from its first sample. */
 export async function rebuild(trx: Trx, locked: SystemState): Promise<Derived> {
   const from = locked.sealedUntilMs ?? -Infinity
   const fresh = { ...locked, head: null, headAtMs: null }
-  return refold(trx, fresh, { fromMs: from, toMs: Infinity })
+  return refold(trx, fresh, { fromMs: from, toMs: Infinity }, false)
 }
 
-function withMark(locked: SystemState, change: Change | null): Change | null {
-  const mark = locked.refoldFromMs
-  if (mark === null) return change
-  // How far a fact reaches is not known, so what was changed reaches to the head.
-  return {
-    fromMs: Math.min(mark, change?.fromMs ?? Infinity),
-    toMs: Math.max(locked.headAtMs ?? -Infinity, change?.toMs ?? -Infinity),
-  }
-}
-
-async function refold(trx: Trx, locked: SystemState, change: Change): Promise<Derived> {
+async function refold(trx: Trx, locked: SystemState, change: Change, keepMark: boolean): Promise<Derived> {
   const { systemId } = locked
   const fromMs = Math.max(change.fromMs, locked.sealedUntilMs ?? -Infinity)
   const append = locked.headAtMs !== null && fromMs > locked.headAtMs
@@ -93,7 +103,7 @@ async function refold(trx: Trx, locked: SystemState, change: Change): Promise<De
       writer.checkpoint(atMs, text)
       if (atMs > change.toMs && kept.has(atMs) && (await isSame(trx, systemId, atMs, text))) {
         await writer.flush(atMs)
-        await clearRefold(trx, systemId)
+        if (!keepMark) await clearRefold(trx, systemId)
         return { items, span: writer.span }
       }
     }
@@ -102,6 +112,7 @@ async function refold(trx: Trx, locked: SystemState, change: Change): Promise<De
   await writer.flush(Infinity)
   const head = atMs === -Infinity ? { atMs: null, text: null } : { atMs, text: serialiseState(state) }
   await writeHead(trx, systemId, { ...head, deriverVersion: DERIVER_VERSION })
+  if (!keepMark) await clearRefold(trx, systemId)
   return { items, span: writer.span }
 }
 

@@ -1,12 +1,8 @@
-import { checkpointTimesAfter } from '@/db/queries/derived'
-import { clearRefold, limitLockWait, lockStates, systemsToCatchUp } from '@/db/queries/system-state'
+import { limitLockWait, lockStates, systemsToCatchUp } from '@/db/queries/system-state'
 import type { Trx } from '@/db/roles'
 import { DERIVER_VERSION } from '@/lib/analysis/fold'
-import { derive, rebuild, type Derived } from '@/ingest/derive'
+import { derive, isOfAnotherVersion, rebuild, type Derived } from '@/ingest/derive'
 import { settle } from '@/ingest/take-in'
-
-/** Over this (some sixty days of record) a change is left to the worker: a request should not fold a year. */
-const INLINE_CHECKPOINTS = 240
 
 /**
  * Takes a changed fact (settings, fitting, statement, calibration) into a system's rows, in the transaction that
@@ -19,10 +15,9 @@ export async function rederive(trx: Trx, systemId: string, since: Date, now: Dat
   await limitLockWait(trx)
   const [locked] = await lockStates(trx, [systemId])
   if (locked === undefined) return
-  const fromMs = Math.min(since.getTime(), locked.refoldFromMs ?? Infinity)
-  if (locked.headAtMs === null && locked.refoldFromMs !== null) await clearRefold(trx, systemId)
-  if ((await checkpointTimesAfter(trx, systemId, fromMs)).length > INLINE_CHECKPOINTS) return
-  await settle(trx, locked, { fromMs, toMs: Math.max(fromMs, locked.headAtMs ?? fromMs) }, now)
+  // The mark says it more exactly; `since` speaks for what the database cannot see change.
+  const change = locked.refoldFromMs === null ? { fromMs: since.getTime(), toMs: since.getTime() } : null
+  await settle(trx, locked, change, now)
 }
 
 /** `rederive` with its present fixed, as services take it. */
@@ -50,9 +45,9 @@ export async function catchUpOne(trx: Trx, now: Date): Promise<string | null> {
   await limitLockWait(trx)
   const [locked] = await lockStates(trx, [systemId])
   if (locked === undefined) return null
-  const anew = locked.rebuildWanted || (locked.head !== null && locked.deriverVersion !== DERIVER_VERSION)
-  await settle(trx, locked, null, now, (t, state, change) =>
-    anew ? rebuild(t, state) : derive(t, state, change),
+  const anew = locked.rebuildWanted || isOfAnotherVersion(locked)
+  await settle(trx, locked, null, now, (t, state) =>
+    anew ? rebuild(t, state) : derive(t, state, null, true),
   )
   return systemId
 }

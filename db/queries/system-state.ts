@@ -78,15 +78,14 @@ export async function readState(trx: Trx, systemId: string): Promise<SystemState
   return rows[0] === undefined ? null : toState(rows[0])
 }
 
-/** Writes the head, all caught up; `text` is the state's canonical JSON, null when nothing was ever folded. */
+/** Writes the head; `text` is the state's canonical JSON, null when nothing was ever folded. */
 export async function writeHead(
   trx: Trx,
   systemId: string,
   head: { atMs: number | null; text: string | null; deriverVersion: number },
 ): Promise<void> {
   await trx.raw(
-    `update system_state set head_at = ?, head = ?, deriver_version = ?, rebuild_wanted = false,
-       refold_from = null where system_id = ?`,
+    `update system_state set head_at = ?, head = ?, deriver_version = ?, rebuild_wanted = false where system_id = ?`,
     [head.atMs === null ? null : new Date(head.atMs), head.text, head.deriverVersion, systemId],
   )
 }
