@@ -141,5 +141,6 @@ describe("a leg's own rate against the leak", () => {
     console.log('legs of two hours and more', JSON.stringify(result))
     expect(boats).toBeGreaterThanOrEqual(BOATS - 2)
     expect(result.median).toBeLessThan(0.06)
+    expect(result.covered).toBeGreaterThanOrEqual(0.85)
   })
 })

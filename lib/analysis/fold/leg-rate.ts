@@ -1,10 +1,11 @@
 import {
   compensatedPressurePa,
   DEFAULT_VAPOUR_FRACTION,
+  pressurePerKelvinPa,
   REFERENCE_TEMPERATURE_K,
   saturationVapourPressurePa,
 } from '@/lib/analysis/gas'
-import { celsiusToKelvin, SECONDS_PER_HOUR } from '@/shared/units'
+import { celsiusToKelvin, SECONDS_PER_HOUR, STANDARD_PRESSURE_PA } from '@/shared/units'
 import { fastTheilSen } from './theil-sen-fast'
 import type { LegBins, LegRow } from './types'
 
@@ -16,7 +17,8 @@ const MOST_POINTS = 40
 /**
  * A leg's own leak rate, Pa/h (positive loses vacuum): Theil–Sen slope of the compensated absolute pressure
  * over the bins' mean times, 95 % interval. Gas temperature is the air lagged by 30 minutes (the first of
- * `LAG_SECONDS`), half of saturated vapour taken out, the interval widened to cover none and all of it.
+ * `LAG_SECONDS`), half of saturated vapour taken out, the interval widened to cover none and all of
+ * it, and what walls and liquid may keep from the gas.
  * Null under 5 minutes or 8 bins. `compensated` only where every bin has air and barometer.
  */
 export function legRate(bins: LegBins): LegRow['rate'] {
@@ -29,7 +31,7 @@ export function legRate(bins: LegBins): LegRow['rate'] {
   const { seconds, pressurePa, gasC } = joined(bins, hasAir, hasBarometer)
   const slope = fastTheilSen(seconds, pressurePa)
   if (slope === null) return null
-  const doubt = hasAir ? vapourDoubt(seconds, gasC) : 0
+  const doubt = hasAir ? vapourDoubt(seconds, gasC) + temperatureDoubt(bins) : 0
   const perHour = (perSecond: number): number => Math.round(perSecond * SECONDS_PER_HOUR * 1000) / 1000
   return {
     paPerHour: perHour(slope.slope),
@@ -74,6 +76,29 @@ function joined(
     gasC.push(gas / weight)
   }
   return { seconds, pressurePa, gasC }
+}
+
+/** Share of the temperature correction that walls and liquid may keep from the gas (judged). */
+const COUPLING_DOUBT = 0.4
+
+/**
+ * How far the rate moves with what is not known of the gas's temperature, Pa/s: a share of the correction
+ * itself, and half of what the slower lag would make of it.
+ */
+function temperatureDoubt(bins: LegBins): number {
+  const [faster, slower] = bins.laggedAirC
+  const perKelvin = pressurePerKelvinPa(
+    STANDARD_PRESSURE_PA - (bins.vacuumPa[0] ?? 0),
+    faster[0] ?? 20,
+    DEFAULT_VAPOUR_FRACTION,
+  )
+  const slope = (celsius: readonly (number | null)[]): number =>
+    perKelvin *
+    leastSquaresSlope(
+      bins.offsetSeconds,
+      celsius.map((value) => value ?? 0),
+    )
+  return COUPLING_DOUBT * Math.abs(slope(faster)) + 0.5 * Math.abs(slope(faster) - slope(slower))
 }
 
 /** Half a saturated vapour pressure's slope, Pa/s: how far the rate moves from a half to none or all. */

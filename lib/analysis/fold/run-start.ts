@@ -22,7 +22,8 @@ export function startRun(state: FoldState, start: Start, rows: Row[]): void {
   const { hold } = state
   const before = vacuumBefore(state)
   const beforePa = before?.pa ?? null
-  const sudden = start.seen ? suddenFallPa(state, start, before) : null
+  const fallen = start.seen ? suddenFallPa(state, start, before) : null
+  const sudden = fallen?.sudden ?? null
   const line = offLinePa(state)
   const isLow = start.startPa !== null && start.startPa < line
   const fellSuddenly = sudden !== null && sudden > Math.max(FLUSH_PA, noiseFloorPa(state))
@@ -38,6 +39,7 @@ export function startRun(state: FoldState, start: Start, rows: Row[]): void {
     startSeen: start.seen,
     startPa: start.startPa,
     fallPa: sudden,
+    bareFallPa: fallen?.bare ?? null,
     beforePa,
     fromOff,
     setAside: state.statement !== null,
@@ -85,12 +87,12 @@ function suddenFallPa(
   state: FoldState,
   start: Start,
   before: { at: Instant; pa: number } | null,
-): number | null {
+): { bare: number; sudden: number } | null {
   if (before === null || start.startPa === null) return null
   const { hold, fall } = state
   const slope = fall?.slopePaPerSecond ?? leakSlope(state)
   const settled = hold === null ? 0 : settlingPa(hold, before.at, start.at)
-  const suddenPa =
-    before.pa - start.startPa - LEAK_MARGIN * slope * ((start.at - before.at) / SECOND) - settled
-  return fall === null ? suddenPa : Math.max(suddenPa, fallPa(fall))
+  const bare = before.pa - start.startPa - slope * ((start.at - before.at) / SECOND) - settled
+  const suddenPa = bare - (LEAK_MARGIN - 1) * slope * ((start.at - before.at) / SECOND)
+  return { bare, sudden: fall === null ? suddenPa : Math.max(suddenPa, fallPa(fall)) }
 }

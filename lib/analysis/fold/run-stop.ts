@@ -135,7 +135,10 @@ function rechargeOf(state: FoldState, run: OpenRun, stop: Stop, peakPa: number |
   return Math.round(((peakPa - fromPa) / ((stop.at - from) / SECOND)) * 100) / 100
 }
 
-/** The flush that started a run; its drop from what was seen, or from how much the pump had to restore. */
+/**
+ * The flush that started a run; its drop from what was seen, or from how much the pump had to restore. Nought
+ * where there is no vacuum channel to tell it.
+ */
 function pushStartFlush(
   state: FoldState,
   run: OpenRun,

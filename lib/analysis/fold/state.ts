@@ -51,6 +51,8 @@ export interface OpenRun {
   startPa: number | null
   /** Fall to the start beyond what the leak explains; null where the vacuum beside it is unknown. */
   fallPa: number | null
+  /** The same without any margin for the leak. */
+  bareFallPa: number | null
   /** Vacuum before that fall. */
   beforePa: number | null
   /** From far below the cut-in, after being off. */

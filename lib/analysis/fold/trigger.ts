@@ -12,7 +12,7 @@ export interface RunEnd {
 
 export interface Decision {
   trigger: Trigger
-  /** The one thing that spoke for a flush, where nothing was seen to fall. */
+  /** The one thing that spoke for a flush at the start, where nothing was seen to fall. */
   only: 'level' | 'length' | null
 }
 
@@ -31,7 +31,9 @@ export function decideTrigger(state: FoldState, run: OpenRun, end: RunEnd): Deci
   if (run.startPa !== null && run.lowPa !== null && run.startPa - run.lowPa > floor) return plain('flush')
   if (startsTooHigh(state, run)) return { trigger: 'flush', only: 'level' }
   if (run.fellMidRun || run.onCurve) return plain('leak')
-  if (isOverLong(state, end)) return { trigger: 'flush', only: 'length' }
+  if (isOverLong(state, end)) {
+    return { trigger: likelierDuringRun(state, run) ? 'leak' : 'flush', only: 'length' }
+  }
   return plain('leak')
 }
 
@@ -44,6 +46,21 @@ function startsTooHigh(state: FoldState, run: OpenRun): boolean {
   if (!cutInIsKnown(state)) return false
   const leaked = 1.5 * state.slopePaPerSecond * (run.startSpacingMs / 1000)
   return run.beforePa - leaked > learnedCutInPa(state) + 0.35 * INHG
+}
+
+/** A fall so small is none. */
+const NO_FALL_PA = 0.06 * INHG
+
+/**
+ * An over-long run whose start was seen at its very level, without a fall: either a flush came in the moments
+ * when the vacuum stood so near the cut-in that its fall hid, or one came during the run, unseen between
+ * samples. The longer of the two times is the likelier.
+ */
+function likelierDuringRun(state: FoldState, run: OpenRun): boolean {
+  const usual = ringMedian(state.rings.runSeconds)
+  if (usual === null || run.bareFallPa === null || run.edgeUncertaintySeconds > 2) return false
+  const leaked = state.slopePaPerSecond * (run.startSpacingMs / 1000)
+  return run.bareFallPa < NO_FALL_PA + 0.05 * leaked && state.slopePaPerSecond * usual > NO_FALL_PA
 }
 
 /** Longer than the tight cluster of leak recharges. */
