@@ -241,7 +241,12 @@ interface OutgoingRow {
 
 /** The message, locked for as long as it is being sent; null when another worker holds it or it is gone. */
 export async function lockMessage(trx: Trx, id: string): Promise<OutgoingMessage | null> {
-  const row = await trx('message').where({ id }).forUpdate().skipLocked().first<OutgoingRow | undefined>()
+  // Receipts that come meanwhile refer to this row and must not wait for it.
+  const row = await trx('message')
+    .where({ id })
+    .forNoKeyUpdate()
+    .skipLocked()
+    .first<OutgoingRow | undefined>()
   if (row === undefined) return null
   return {
     id: String(row.id),
