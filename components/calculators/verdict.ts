@@ -1,10 +1,10 @@
 import type { Readings } from '@/components/calculators/readings'
+import { durationAndInterval } from '@/components/figures'
 import type { SystemState } from '@/components/states'
 import type { Phrase } from '@/components/tonight/phrases'
 import type { LeakDownVerdict } from '@/shared/schemas'
 import {
   formatDuration,
-  formatDurationRange,
   formatLeakFlow,
   formatRate,
   formatRateRange,
@@ -69,10 +69,11 @@ export function verdictSentence(answer: LeakDownAnswer, { differentialPa }: Read
       { text: '.' },
     ]
   }
+  const [value, interval] = durationAndInterval(answer.holdSeconds, least, most)
   return [
     { text: `${WORDS[answer.verdict]} It would hold about ` },
-    { text: formatDuration(answer.holdSeconds), strong: 'ink' },
-    { text: ` (${formatDurationRange(least, most)})` },
+    { text: value, strong: 'ink' },
+    { text: ` (${interval})` },
     { text: answer.holdSeconds < LIMIT_SECONDS ? `; the least is ${formatDuration(LIMIT_SECONDS)}.` : '.' },
   ]
 }

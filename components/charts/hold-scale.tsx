@@ -15,7 +15,7 @@ export function HoldLines({
   return (
     <>
       <span
-        className="absolute inset-y-0 border-l border-dotted border-ink-2"
+        className="absolute inset-y-0 w-px bg-[repeating-linear-gradient(var(--ink-2)_0_2px,transparent_2px_5px)]"
         style={{ left: percent(limitSeconds) }}
       />
       <span className="absolute inset-y-0 border-l border-ink-2" style={{ left: percent(aimSeconds) }} />

@@ -92,7 +92,7 @@ export function FleetFilters({
           aria-label="Find a boat or berth"
           aria-keyshortcuts="/"
           placeholder="Find a boat or berth  /"
-          className="min-h-11 min-w-0 flex-1 basis-full rounded-sm border border-field bg-water px-2.5 placeholder:text-ink-2 sm:basis-60 lg:min-h-9"
+          className="min-h-11 min-w-0 flex-1 basis-full lg:basis-60 rounded-sm border border-field bg-water px-2.5 placeholder:text-ink-2 sm:basis-60 lg:min-h-9"
           value={view.find}
           onChange={(event) => change({ find: event.target.value })}
           onKeyDown={(event) => {

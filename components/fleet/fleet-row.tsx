@@ -4,8 +4,10 @@ import Link from 'next/link'
 import { memo } from 'react'
 import { HoldLines, HoldMark } from '@/components/charts/hold-scale'
 import { NightRow, stripWords } from '@/components/charts/night-strip'
-import { holdWords, movingWords, rowName, tonightWords } from '@/components/fleet/fleet-words'
+import { movingWords, rowName, tonightWords } from '@/components/fleet/fleet-words'
+import { holdWords } from '@/components/figures'
 import type { FleetBoat } from '@/components/fleet/order'
+import { finishedNights } from '@/components/nights'
 import { NOTICE_WORDS } from '@/components/notices/words'
 import { isTroubled } from '@/components/states'
 import { dayAndClock, dayOfDate, span } from '@/components/time'
@@ -33,6 +35,7 @@ export const FleetRowCells = memo(function FleetRowCells({ row, index, nights, n
   const berth = [row.berth, row.harbour].filter(Boolean).join(', ')
   const calm = !isTroubled(row.state)
   const tonight = tonightWords(row)
+  const over = finishedNights(nights ?? [], row.utcOffsetSeconds, nowMs)
   return (
     <div
       role="row"
@@ -67,9 +70,7 @@ export const FleetRowCells = memo(function FleetRowCells({ row, index, nights, n
         {row.aboard === 'aboard' ? <span className="datum block">aboard now</span> : null}
       </div>
       <div role="cell" className="col-span-2 my-2 min-h-5 lg:col-span-1 lg:my-0">
-        {nights && nights.length > 0 ? (
-          <NightRow nights={nights} calm={calm} label={nightsLabel(nights)} />
-        ) : null}
+        {over.length > 0 ? <NightRow nights={over} calm={calm} label={nightsLabel(over)} /> : null}
       </div>
       <div role="cell" className="figure whitespace-nowrap">
         <span className="lg:hidden">heard </span>

@@ -1,14 +1,6 @@
 import { dayAndClock, dayOf } from '@/components/time'
-import type { FleetRow, HoldTime } from '@/shared/schemas'
-import { formatDuration, formatDurationRange, UNKNOWN } from '@/shared/units'
-
-/** "2.2 h (1.9 to 2.6 h)", "at least 14 h", or a dash: never a figure without how sure it is. */
-export function holdWords(holdTime: HoldTime | null): string {
-  if (holdTime === null) return UNKNOWN
-  if (holdTime.bound === 'at-least') return `at least ${formatDuration(holdTime.seconds)}`
-  if (holdTime.low === null || holdTime.high === null) return formatDuration(holdTime.seconds)
-  return `${formatDuration(holdTime.seconds)} (${formatDurationRange(holdTime.low, holdTime.high)})`
-}
+import type { FleetRow } from '@/shared/schemas'
+import { formatDuration } from '@/shared/units'
 
 /** How the leak is moving, in a few words with their day: "worse since Sun 22 Nov". */
 export function movingWords(row: FleetRow, nowMs: number): string {

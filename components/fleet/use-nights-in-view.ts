@@ -9,13 +9,13 @@ const REFRESH_MS = 5 * 60_000
 
 function useChunk(rows: readonly FleetBoat[], index: number) {
   const ids = rows.slice(index * CHUNK, (index + 1) * CHUNK).map((row) => row.systemId)
-  return useApi<Nights>(ids.length > 0 ? `/api/nights?systems=${ids.join(',')}&nights=7` : null, {
+  return useApi<Nights>(ids.length > 0 ? `/api/nights?systems=${ids.join(',')}&nights=8` : null, {
     refreshMs: REFRESH_MS,
   }).data
 }
 
 /**
- * The last seven nights of the rows between two indexes, and of nobody else: three stretches of 32 rows cover
+ * The last nights, the one to come with them, of the rows between two indexes, and of nobody else: three stretches of 32 rows cover
  * any screen, and each stretch is asked for once however the reader scrolls.
  */
 export function useNightsInView(rows: readonly FleetBoat[], first: number): Map<string, Night[]> {

@@ -1,7 +1,8 @@
 import { clock, offsetAt } from '@/components/time'
+import { durationAndInterval } from '@/components/figures'
 import { tonightKind, type TonightFacts } from '@/components/tonight/sentences'
 import type { HoldTime } from '@/shared/schemas'
-import { formatDuration, formatDurationRange, formatShare } from '@/shared/units'
+import { formatDuration, formatShare } from '@/shared/units'
 
 const hours = (value: number): string => `${Number(value.toFixed(1))} h`
 
@@ -9,10 +10,8 @@ const hours = (value: number): string => `${Number(value.toFixed(1))} h`
 export function quietBetweenRuns(holdTime: HoldTime): string {
   if (holdTime.bound === 'at-least')
     return `It stays quiet for at least ${formatDuration(holdTime.seconds)} between runs`
-  return `It stays quiet for ${formatDuration(holdTime.seconds)} between runs (${formatDurationRange(
-    holdTime.low,
-    holdTime.high,
-  )})`
+  const [value, interval] = durationAndInterval(holdTime.seconds, holdTime.low, holdTime.high)
+  return `It stays quiet for ${value} between runs${interval === '' ? '' : ` (${interval})`}`
 }
 
 function measuredFrom({ summary }: TonightFacts): string {

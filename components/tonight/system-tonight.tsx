@@ -4,6 +4,7 @@ import { axisMinutes, NightAxis } from '@/components/charts/night-axis'
 import { NightStrip } from '@/components/charts/night-strip'
 import { useApi } from '@/components/data/use-api'
 import { useNow } from '@/components/data/use-now'
+import { finishedNights } from '@/components/nights'
 import { isTroubled } from '@/components/states'
 import { ago } from '@/components/time'
 import { adviceFor } from '@/components/tonight/advice'
@@ -37,7 +38,7 @@ export function SystemTonight({ vessel, system }: { vessel: Vessel; system: Syst
   const advice = adviceFor(kind)
   const listed = nights.data?.items.find((item) => item.systemId === system.id)?.nights ?? []
   const tonight = tonightOf(listed, coming, vessel.utcOffsetSeconds)
-  const past = listed.filter((night) => night.date !== tonight?.date).slice(-7)
+  const past = finishedNights(listed, vessel.utcOffsetSeconds, now)
   const calm = !isTroubled(summary.data.state)
   const reason = tonightReason(facts)
   return (

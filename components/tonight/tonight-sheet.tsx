@@ -3,11 +3,20 @@
 import { useApi } from '@/components/data/use-api'
 import { VesselTonight } from '@/components/tonight/vessel-tonight'
 import { Empty, Loading, Trouble } from '@/components/ui/sheet-states'
-import type { Me } from '@/shared/schemas'
+import { sortRows } from '@/components/fleet/order'
+import type { FleetRow, List, Me } from '@/shared/schemas'
+
+/** The boat that wants attention stands on top; until the states are read, by name. */
+function worstFirst(vessels: Me['ownVessels'], rows: readonly FleetRow[]): Me['ownVessels'] {
+  const order = sortRows(rows, 'worst').map((row) => row.vesselId)
+  const place = (id: string) => (order.includes(id) ? order.indexOf(id) : order.length)
+  return [...vessels].sort((a, b) => place(a.id) - place(b.id))
+}
 
 /** The owner's home: every boat of theirs, tonight. */
 export function TonightSheet() {
   const { data: me, error, mutate } = useApi<Me>('/api/me')
+  const rows = useApi<List<FleetRow>>(me && me.ownVessels.length > 1 ? '/api/vessels' : null).data?.items
   if (error) return <Trouble title={error.message} retry={() => void mutate()} />
   if (!me) return <Loading what="your boats" />
   if (me.ownVessels.length === 0) {
@@ -20,7 +29,7 @@ export function TonightSheet() {
   }
   return (
     <div>
-      {me.ownVessels.map((vessel) => (
+      {worstFirst(me.ownVessels, rows ?? []).map((vessel) => (
         <VesselTonight key={vessel.id} id={vessel.id} name={vessel.name} />
       ))}
     </div>

@@ -1,25 +1,21 @@
 import { clock, dayAndClock, offsetAt, type ZoneOffset } from '@/components/time'
+import { durationAndInterval } from '@/components/figures'
 import { firstRunInstant, LIKELY, runsToSay } from '@/components/tonight/night-plan'
 import { times, type Phrase } from '@/components/tonight/phrases'
 import { STATE_WORDS } from '@/components/states'
 import type { Cause, Outlook, Step, Summary } from '@/shared/schemas'
-import {
-  formatDuration,
-  formatDurationRange,
-  formatRate,
-  formatRateRange,
-  type VacuumUnit,
-} from '@/shared/units'
+import { formatDuration, formatRate, formatRateRange, type VacuumUnit } from '@/shared/units'
 
 function holds(summary: Summary): Phrase[] {
   const hold = summary.holdTime
   if (hold === null) return []
   if (hold.bound === 'at-least')
     return [{ text: ' Holds ' }, { text: `at least ${formatDuration(hold.seconds)}`, strong: 'ink' }]
+  const [value, interval] = durationAndInterval(hold.seconds, hold.low, hold.high)
   return [
     { text: ' Holds ' },
-    { text: formatDuration(hold.seconds), strong: 'ink' },
-    { text: ` (${formatDurationRange(hold.low, hold.high)})` },
+    { text: value, strong: 'ink' },
+    { text: interval === '' ? '' : ` (${interval})` },
   ]
 }
 

@@ -2,6 +2,7 @@
 
 import { useNow } from '@/components/data/use-now'
 import { useUnits } from '@/components/shell/units-context'
+import { finishedNights } from '@/components/nights'
 import { isTroubled } from '@/components/states'
 import { LastNights } from '@/components/tonight/last-nights'
 import { useVessel } from '@/components/vessel/use-vessel'
@@ -17,9 +18,10 @@ export function NowTab({ id }: { id: string }) {
   const { vessel, system } = useVessel(id)
   const summary = useSummary(system?.id).data
   const outlook = useOutlook(system?.id).data ?? null
-  const nights = useNights(system?.id, 7).data
+  const nights = useNights(system?.id, 8).data
   if (!vessel || !system) return null
-  const listed = nights?.items.find((item) => item.systemId === system.id)?.nights ?? []
+  const heard = nights?.items.find((item) => item.systemId === system.id)?.nights ?? []
+  const listed = finishedNights(heard, vessel.utcOffsetSeconds, now)
   const offsets = [{ from: 0, seconds: vessel.utcOffsetSeconds }]
   return (
     <div className="mt-5 grid gap-x-16 gap-y-6 xl:grid-cols-[minmax(0,1fr)_minmax(0,34rem)]">

@@ -3,6 +3,7 @@
 import { useMemo } from 'react'
 import { useApi } from '@/components/data/use-api'
 import { useNow } from '@/components/data/use-now'
+import { finishedNights } from '@/components/nights'
 import { isTroubled } from '@/components/states'
 import { LastNights } from '@/components/tonight/last-nights'
 import { Empty } from '@/components/ui/sheet-states'
@@ -20,7 +21,7 @@ export function RecordTab({ id }: { id: string }) {
   const { vessel, system } = useVessel(id)
   const trend = useTrend(system?.id, now).data
   const visits = useApi<List<Visit>>(vessel ? `/api/visits?vessel=${vessel.id}` : null).data
-  const nights = useNights(system?.id, 14).data
+  const nights = useNights(system?.id, 15).data
   const offset = vessel?.utcOffsetSeconds ?? 0
   const steps = useMemo(
     () => stepMarks(trend?.steps ?? [], [{ from: 0, seconds: offset }], now),
@@ -28,7 +29,8 @@ export function RecordTab({ id }: { id: string }) {
   )
   const came = useMemo(() => visitMarks(visits?.items ?? [], system?.id ?? ''), [visits, system?.id])
   if (!vessel || !system) return null
-  const listed = nights?.items.find((item) => item.systemId === system.id)?.nights ?? []
+  const heard = nights?.items.find((item) => item.systemId === system.id)?.nights ?? []
+  const listed = finishedNights(heard, vessel.utcOffsetSeconds, now, 14)
   return (
     <>
       <div className="mt-5 grid gap-x-12 gap-y-6 xl:grid-cols-[minmax(0,1fr)_27rem]">

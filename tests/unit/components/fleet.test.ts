@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { fleetFinding } from '@/components/fleet/finding'
-import { holdWords, movingWords, tonightWords } from '@/components/fleet/fleet-words'
+import { holdWords } from '@/components/figures'
+import { movingWords, tonightWords } from '@/components/fleet/fleet-words'
 import { sortRows, SORTS } from '@/components/fleet/order'
 import { countStates, filterRows, harboursOf, parseView, viewQuery } from '@/components/fleet/view-state'
 import { stateSchema } from '@/shared/schemas'
@@ -84,6 +85,7 @@ describe('the words of a row', () => {
   it('never give a hold time without how sure it is', () => {
     expect(holdWords(hold(2.2))).toBe('2.2 h (2 to 2.5 h)')
     expect(holdWords(hold(14, { bound: 'at-least', high: null }))).toBe('at least 14 h')
+    expect(holdWords(hold(1.4, { low: 5000, high: 5060 }))).toBe('1.4 h (± 40 s)')
     expect(holdWords(null)).toBe('–')
   })
   it('say how it moves and since when', () => {

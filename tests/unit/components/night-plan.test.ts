@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { expectedMinutes, minuteOf, runsToSay, tonightOf } from '@/components/tonight/night-plan'
+import { finishedNights } from '@/components/nights'
 import { clockChanges } from '@/components/tonight/use-night-offsets'
 import { hold, outlook, summary } from './fixtures'
 
@@ -60,5 +61,22 @@ describe('a night whose clock changes', () => {
     const usual = { from: '2026-12-02T02:00:00Z', to: '2026-12-02T11:00:00Z', timeZone: '', hours: 9 }
     expect(clockChanges(usual, quiet, -4 * 3600)).toBe(false)
     expect(clockChanges({ ...usual, to: '2026-12-02T12:00:00Z', hours: 10 }, quiet, -4 * 3600)).toBe(true)
+  })
+})
+
+describe('the nights that are over', () => {
+  const night = (date: string) => ({
+    date,
+    quiet: [240, 780] as [number, number],
+    runs: [],
+    flushes: [],
+    more: 0,
+  })
+  const nights = ['2026-11-29', '2026-11-30', '2026-12-01'].map(night)
+  const dates = (at: string) => finishedNights(nights, -14_400, Date.parse(at)).map((one) => one.date)
+  it('do not hold the one that is to come or under way', () => {
+    expect(dates('2026-12-01T22:40:00Z')).toEqual(['2026-11-29', '2026-11-30'])
+    expect(dates('2026-12-02T10:59:00Z')).toEqual(['2026-11-29', '2026-11-30'])
+    expect(dates('2026-12-02T11:00:00Z')).toEqual(['2026-11-29', '2026-11-30', '2026-12-01'])
   })
 })
