@@ -25,7 +25,8 @@ language sql stable security definer set search_path = public as $$
       and has_role(v.shop_id, array['technician', 'manager'])
   union select s.vessel_id from logger_fitting f join logger l on l.id = f.logger_id join system s on s.id = f.system_id
     where f.fitted_by = current_person() and upper_inf(f.span) and l.retired_at is null
-      and l.key_made_at > now() - interval '24 hours' and s.vessel_id in (select visible_vessels())
+      and l.key_made_at > now() - interval '24 hours' and s.vessel_id in (
+        select a.vessel_id from shop_access a where a.withdrawn_at is null and has_role(a.shop_id, array['installer']))
   union select id from vessel where kept_by_shop_id in (select my_shops())
 $$;
 `)
