@@ -1,5 +1,6 @@
 /** Everything that crosses a wire, and the types drawn from it. */
 export * from './calculators'
+export * from './commissioning'
 export * from './common'
 export * from './figures'
 export * from './health'

@@ -1,4 +1,5 @@
 import type { Operation } from '../operation'
+import { commissioningOperations } from './commissionings'
 import { loggerOperations } from './loggers'
 import { noticeOperations } from './notices'
 import { peopleOperations } from './people'
@@ -11,6 +12,7 @@ import { visitOperations } from './visits'
 export const OPERATIONS: readonly Operation[] = [
   ...vesselOperations,
   ...loggerOperations,
+  ...commissioningOperations,
   ...readingOperations,
   ...noticeOperations,
   ...visitOperations,

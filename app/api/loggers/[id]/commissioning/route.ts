@@ -1,0 +1,10 @@
+import { handle } from '@/lib/api/handle'
+import { methods } from '@/lib/api/methods'
+import * as operations from '@/lib/api/operations/commissionings'
+import { getCommissioningRecord } from '@/lib/commissioning/read-commissionings'
+
+export const { GET, POST, PUT, PATCH, DELETE } = methods({
+  GET: handle(operations.getLoggerCommissioning, ({ person, params, now }) =>
+    getCommissioningRecord(person, params.id, now),
+  ),
+})
