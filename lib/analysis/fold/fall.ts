@@ -22,7 +22,7 @@ export function settlingPa(hold: OpenHold, from: Instant, to: Instant): number {
   return hold.settlingPa * (share(from) - share(to))
 }
 
-/** The sharpest fall from the last half minute to this sample. */
+/** The sharpest fall from the last half minute (or the last sample) to this one; null where there is none. */
 export function findFall(
   state: FoldState,
   hold: OpenHold,
@@ -31,25 +31,41 @@ export function findFall(
 ): PendingFall | null {
   const floor = Math.max(TAP_PA, noiseFloorPa(state))
   const { recent } = state
-  let slope = -1
-  let best: PendingFall | null = null
-  let bestExcess = 0
-  const compare = (fromAt: Instant, fromPa: number): void => {
-    if (fromPa - vacuumPa < floor) return
-    if (slope < 0) slope = leakSlope(state)
-    const seconds = (at - fromAt) / SECOND
-    const excess = fromPa - vacuumPa - slope * seconds - settlingPa(hold, fromAt, at)
-    if (excess < floor + 0.3 * slope * seconds || excess <= bestExcess) return
-    bestExcess = excess
-    best = { fromAt, fromPa, at, lowAt: at, lowPa: vacuumPa, slopePaPerSecond: slope }
+  let fromAt = hold.lastAt
+  let fromPa = hold.lastPa
+  if (fromPa === null && hold.startSeen) {
+    fromAt = hold.startedAt
+    fromPa = hold.cutOutPa
   }
-  if (hold.lastAt !== null && hold.lastPa !== null) compare(hold.lastAt, hold.lastPa)
-  else if (hold.startSeen && hold.cutOutPa !== null) compare(hold.startedAt, hold.cutOutPa)
+  let best: PendingFall | null = null
+  if (fromAt !== null && fromPa !== null && fromPa - vacuumPa >= floor) {
+    best = fallFrom(state, hold, fromAt, fromPa, at, vacuumPa, floor)
+  }
   for (let i = 0; i + 1 < recent.length; i += 2) {
-    const fromAt = recent[i] ?? 0
-    if (at - fromAt <= FALL_WINDOW_MS) compare(fromAt, recent[i + 1] ?? 0)
+    const recentAt = recent[i] ?? 0
+    const recentPa = recent[i + 1] ?? 0
+    if (recentPa - vacuumPa < floor || at - recentAt > FALL_WINDOW_MS) continue
+    const fall = fallFrom(state, hold, recentAt, recentPa, at, vacuumPa, floor)
+    if (fall !== null && (best === null || fallPa(fall) > fallPa(best))) best = fall
   }
   return best
+}
+
+/** The fall between two readings where leak and settling don't explain it. */
+function fallFrom(
+  state: FoldState,
+  hold: OpenHold,
+  fromAt: Instant,
+  fromPa: number,
+  at: Instant,
+  vacuumPa: number,
+  floor: number,
+): PendingFall | null {
+  const slope = leakSlope(state)
+  const seconds = (at - fromAt) / SECOND
+  const excess = fromPa - vacuumPa - slope * seconds - settlingPa(hold, fromAt, at)
+  if (excess < floor + 0.3 * slope * seconds) return null
+  return { fromAt, fromPa, at, lowAt: at, lowPa: vacuumPa, slopePaPerSecond: slope }
 }
 
 /** Remembers an accepted sample for the next comparisons. */

@@ -38,6 +38,7 @@ export function openHold(
     learnedCutOutPa: hasVacuum ? learnedCutOutPa(state) : null,
     learnedSettledPa: hasVacuum ? learnedSettledPa(state) : null,
     learnedCutInPa: hasVacuum ? learnedCutInPa(state) : null,
+    offLinePa: offLinePa(state),
     setAside: state.statement !== null,
     edgeUncertaintySeconds: start.edgeUncertaintySeconds,
     settlingPa: usualSettlingPa * Math.max(1, start.depth),
@@ -74,7 +75,7 @@ export function holdSample(state: FoldState, at: Instant, vacuumPa: number, rows
   const { hold } = state
   if (hold === null) return
   learnStep(state, hold, vacuumPa)
-  if (vacuumPa >= offLinePa(state)) state.lowSince = null
+  if (vacuumPa >= hold.offLinePa) state.lowSince = null
   else state.lowSince ??= at
   if (isSteady(state, hold, at, vacuumPa, rows)) accept(state, hold, at, vacuumPa)
   if (state.lowSince !== null && at - state.lowSince >= OFF_AFTER_MS) {

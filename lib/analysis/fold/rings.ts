@@ -15,13 +15,23 @@ export function pushRing(ring: number[], value: number, length = RING_LENGTH): v
   if (ring.length > length) ring.shift()
 }
 
-/** Middle of a short list; null for none. */
+const scratch = new Float64Array(64)
+
+/** Middle of a short list (at most 64); null for none. Asked several times a run, hence the sort by insertion. */
 export function ringMedian(ring: readonly number[]): number | null {
-  const sorted = [...ring].sort((a, b) => a - b)
-  const middle = sorted[sorted.length >> 1]
-  if (middle === undefined) return null
-  if (sorted.length % 2 === 1) return middle
-  return (middle + (sorted[(sorted.length >> 1) - 1] ?? middle)) / 2
+  const size = Math.min(ring.length, scratch.length)
+  for (let i = 0; i < size; i += 1) {
+    const value = ring[i] ?? 0
+    let place = i
+    while (place > 0 && (scratch[place - 1] ?? 0) > value) {
+      scratch[place] = scratch[place - 1] ?? 0
+      place -= 1
+    }
+    scratch[place] = value
+  }
+  if (size === 0) return null
+  const middle = scratch[size >> 1] ?? 0
+  return size % 2 === 1 ? middle : (middle + (scratch[(size >> 1) - 1] ?? middle)) / 2
 }
 
 /** A ring's median once it has five values, else the set-up's figure, else what there is, else the default. */

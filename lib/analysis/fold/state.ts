@@ -24,6 +24,8 @@ export interface OpenHold {
   learnedCutOutPa: number | null
   learnedSettledPa: number | null
   learnedCutInPa: number | null
+  /** Under this without a start the pump is off. */
+  offLinePa: number
   setAside: boolean
   edgeUncertaintySeconds: number
   /** What the gas may take back while it warms after the stop (generous). */

@@ -34,7 +34,9 @@ export function fastTheilSen(
 /** Variance of Kendall's S with ties in y alone (Kendall 1970, ch. 4). */
 function varianceOfS(y: readonly number[]): number {
   const spread = (t: number): number => t * (t - 1) * (2 * t + 5)
-  const sorted = Float64Array.from(y).sort()
+  const sorted = new Float64Array(y.length)
+  for (let i = 0; i < y.length; i += 1) sorted[i] = y[i] ?? 0
+  sorted.sort()
   let ties = 0
   let run = 1
   for (let i = 1; i <= sorted.length; i += 1) {
