@@ -132,8 +132,8 @@ function textMessage(told: BoatWords[], places: Places): string {
   return firstThatFits([
     `${head}${list(boats.length, 40)}.${tail} ${link}`,
     ...counts.flatMap((count) => [
-      `${head}${list(count, 16)}.${tail} ${link}`,
-      `${head}${list(count, 12)}. ${link}`,
+      `${head}${list(count, 14)}.${tail} ${link}`,
+      `${head}${list(count, 14)}. ${link}`,
     ]),
     `${boats.length} boats have news: ${link}`,
   ])

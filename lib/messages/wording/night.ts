@@ -7,7 +7,7 @@ import type { ToldEvent } from '@/db/queries/notice-events'
 export function nightWording(event: ToldEvent, clock: (hhmm: string) => string): Wording {
   const night = nightEvidenceSchema.parse(event.evidence)
   const times = timesOf(night)
-  const hours = `${clock(night.local.from)} to ${clock(night.local.to)}`
+  const hours = `${clock(night.local.from)} and ${clock(night.local.to)}`
   return {
     subject: `the toilet pump is likely to run ${times} tonight`,
     finding: `The pump is likely to run by itself ${times} between ${hours}${firstOf(night, clock)}.`,
