@@ -1,3 +1,4 @@
+export * from './cause'
 export * from './figures-input'
 export * from './figures-of'
 export * from './state'
