@@ -1,3 +1,4 @@
+import { STRIP_MINUTES } from '@/components/charts/scales'
 import type { Night } from '@/shared/schemas'
 
 /**
@@ -14,4 +15,23 @@ export function finishedNights(
   return nights
     .filter((night) => Date.parse(`${night.date}T18:00:00Z`) + night.quiet[1] * 60_000 <= localMs)
     .slice(-most)
+}
+
+/**
+ * A night whose list of runs was cut short, drawn on: the runs beyond it follow at the pace of those listed, to
+ * the morning. `cut` says that this was done, so that its count is said as "about".
+ */
+export function drawnOn(night: Night): Night & { cut: boolean } {
+  const first = night.runs[0]
+  const last = night.runs[night.runs.length - 1]
+  if (night.more === 0 || first === undefined || last === undefined || night.runs.length < 2)
+    return { ...night, cut: night.more > 0 }
+  const pace = (last - first) / (night.runs.length - 1)
+  const beyond = Array.from({ length: night.more }, (_, index) => last + pace * (index + 1))
+  return {
+    ...night,
+    runs: [...night.runs, ...beyond.filter((minute) => minute <= STRIP_MINUTES)],
+    more: 0,
+    cut: true,
+  }
 }

@@ -60,7 +60,7 @@ export function FleetFilters({
           </button>
         ))}
       </div>
-      <div className="flex w-full flex-wrap gap-2 lg:ml-auto lg:w-auto">
+      <div className="flex w-full flex-wrap gap-2 lg:ml-auto lg:w-auto lg:flex-nowrap">
         {harbours.length > 1 ? (
           <select
             aria-label="Harbour"
@@ -92,7 +92,7 @@ export function FleetFilters({
           aria-label="Find a boat or berth"
           aria-keyshortcuts="/"
           placeholder="Find a boat or berth  /"
-          className="min-h-11 min-w-0 flex-1 basis-full lg:basis-60 rounded-sm border border-field bg-water px-2.5 placeholder:text-ink-2 sm:basis-60 lg:min-h-9"
+          className="min-h-11 min-w-0 flex-1 basis-full rounded-sm border border-field bg-water px-2.5 placeholder:text-ink-2 sm:basis-60 lg:min-h-9 lg:w-60 lg:flex-none"
           value={view.find}
           onChange={(event) => change({ find: event.target.value })}
           onKeyDown={(event) => {

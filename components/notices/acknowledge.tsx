@@ -7,19 +7,18 @@ import { Button } from '@/components/ui/button'
 import { Trouble } from '@/components/ui/sheet-states'
 import type { Notice } from '@/shared/schemas'
 
-const DAY_MS = 86_400_000
+const WEEK_MS = 7 * 86_400_000
 
-/** "I have seen it", with a note for whoever reads it next; or not before next week. */
+/** "I have seen it", with a note for whoever reads it next; or not again before next week. */
 export function Acknowledge({ notice }: { notice: Notice }) {
   const { mutate } = useSWRConfig()
   const { register, handleSubmit, formState, setError } = useForm<{ note: string }>({
     defaultValues: { note: '' },
   })
-  const fresh = () => mutate((key) => typeof key === 'string' && key.startsWith('/api/notices'))
   const attempt = async (work: () => Promise<unknown>) => {
     try {
       await work()
-      await fresh()
+      await mutate((key) => typeof key === 'string' && key.startsWith('/api/notices'))
     } catch (error) {
       setError('root', {
         message: error instanceof ApiProblem ? error.message : 'That did not work. Try again.',
@@ -29,48 +28,35 @@ export function Acknowledge({ notice }: { notice: Notice }) {
   const submit = handleSubmit(({ note }) =>
     attempt(() => send('POST', `/api/notices/${notice.id}/acknowledge`, note.trim() === '' ? {} : { note })),
   )
-  const snooze = (snoozedUntil: string | null) =>
-    attempt(() => send('PATCH', `/api/notices/${notice.id}`, { snoozedUntil }))
+  const snooze = () => {
+    const snoozedUntil = notice.snoozedUntil === null ? new Date(Date.now() + WEEK_MS).toISOString() : null
+    return attempt(() => send('PATCH', `/api/notices/${notice.id}`, { snoozedUntil }))
+  }
   return (
-    <form onSubmit={(event) => void submit(event)} className="no-print mt-3 grid gap-2">
-      {notice.acknowledgedAt === null ? (
-        <div className="flex flex-wrap gap-2">
-          <input
-            aria-label="A note for whoever reads this next"
-            placeholder="A note for whoever reads this next"
-            maxLength={2000}
-            className="min-h-11 min-w-0 flex-1 basis-64 rounded-sm border border-field bg-water px-3 placeholder:text-ink-2 sm:max-w-[26em]"
-            {...register('note')}
-          />
-          <Button type="submit" disabled={formState.isSubmitting}>
+    <form onSubmit={(event) => void submit(event)} className="no-print mt-2 lg:mt-0 lg:justify-self-end">
+      <div className="flex flex-wrap gap-2">
+        {notice.acknowledgedAt === null ? (
+          <Button type="submit" weight="quiet" disabled={formState.isSubmitting}>
             I have seen it
           </Button>
-          <SnoozeButton notice={notice} snooze={snooze} />
-        </div>
-      ) : (
-        <div>
-          <SnoozeButton notice={notice} snooze={snooze} />
-        </div>
-      )}
+        ) : null}
+        <Button weight="plain" disabled={formState.isSubmitting} onClick={() => void snooze()}>
+          {notice.snoozedUntil === null ? 'Not again this week' : 'Wake it again'}
+        </Button>
+      </div>
+      {notice.acknowledgedAt === null ? (
+        <details>
+          <summary className="py-1">Add a note</summary>
+          <input
+            aria-label="A note for whoever reads this next"
+            placeholder="For whoever reads this next"
+            maxLength={2000}
+            className="mt-1 min-h-11 w-full min-w-0 rounded-sm border border-field bg-water px-3 placeholder:text-ink-2"
+            {...register('note')}
+          />
+        </details>
+      ) : null}
       {formState.errors.root?.message ? <Trouble title={formState.errors.root.message} /> : null}
     </form>
-  )
-}
-
-function SnoozeButton({
-  notice,
-  snooze,
-}: {
-  notice: Notice
-  snooze: (until: string | null) => Promise<void>
-}) {
-  return notice.snoozedUntil === null ? (
-    <Button weight="quiet" onClick={() => void snooze(new Date(Date.now() + 7 * DAY_MS).toISOString())}>
-      Not again this week
-    </Button>
-  ) : (
-    <Button weight="quiet" onClick={() => void snooze(null)}>
-      Wake it again
-    </Button>
   )
 }

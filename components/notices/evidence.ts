@@ -9,7 +9,7 @@ function nameOf(key: string): string {
     .toLowerCase()
     .trim()
     .split(' ')
-  const name = words.join(' ').replace(/ (seconds|pa per hour|pa per second|pa|cel|v|at)$/, '')
+  const name = words.join(' ').replace(/ (seconds|pa per hour|pa per second|pa|cel|c|v|at)$/, '')
   return name.charAt(0).toUpperCase() + name.slice(1)
 }
 
@@ -18,7 +18,7 @@ function valueOf(key: string, value: number, unit: VacuumUnit): string {
   if (/PaPerHour$/.test(key)) return formatRate(value, unit)
   if (/PaPerSecond$/.test(key)) return `${formatVacuum(value, unit, 3)}/s`
   if (/Pa$/.test(key)) return formatVacuum(value, unit)
-  if (/Cel$/.test(key)) return `${value.toFixed(1)} °C`
+  if (/(Cel|airC)$/.test(key)) return `${value.toFixed(1)} °C`
   if (/V$/.test(key)) return `${value.toFixed(1)} V`
   if (/chance|probability|share/i.test(key)) return `${Math.round(value * 100)} %`
   return String(Math.round(value * 100) / 100)

@@ -1,18 +1,20 @@
 import { NightAxis, axisMinutes } from '@/components/charts/night-axis'
 import { NightStrip } from '@/components/charts/night-strip'
 import { inQuiet } from '@/components/charts/scales'
+import { drawnOn } from '@/components/nights'
 import { dayOfDate, weekdayOfDate } from '@/components/time'
 import type { Night } from '@/shared/schemas'
 
 /** Runs by themselves within the quiet hours: what may have woken somebody. */
 export const wokenBy = (night: Night): number =>
-  night.runs.filter((minute) => inQuiet(minute, night.quiet)).length + night.more
+  drawnOn(night).runs.filter((minute) => inQuiet(minute, night.quiet)).length
 
-/** What a night came to: "quiet", "1 run", "6 runs". */
+/** What a night came to: "quiet", "1 run", "6 runs", "c. 75 runs" where not every one was listed. */
 export function nightWord(night: Night): string {
   const count = wokenBy(night)
   if (count === 0) return 'quiet'
-  return `${count} ${count === 1 ? 'run' : 'runs'}`
+  const about = night.more > 0 ? 'c. ' : ''
+  return `${about}${count} ${count === 1 ? 'run' : 'runs'}`
 }
 
 /** The last nights, newest first, each as a strip with its outcome in a word. */
@@ -24,7 +26,7 @@ export function LastNights({ nights, calm }: { nights: readonly Night[]; calm: b
       {newest.map((night) => (
         <div key={night.date} className="contents">
           <span>{weekdayOfDate(night.date)}</span>
-          <NightStrip night={night} height={20} calm={calm} label={dayOfDate(night.date)} />
+          <NightStrip night={drawnOn(night)} height={20} calm={calm} label={dayOfDate(night.date)} />
           <span className={`figure ${wokenBy(night) === 0 ? 'text-sound' : calm ? '' : 'text-attention'}`}>
             {nightWord(night)}
           </span>

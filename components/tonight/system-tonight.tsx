@@ -4,7 +4,7 @@ import { axisMinutes, NightAxis } from '@/components/charts/night-axis'
 import { NightStrip } from '@/components/charts/night-strip'
 import { useApi } from '@/components/data/use-api'
 import { useNow } from '@/components/data/use-now'
-import { finishedNights } from '@/components/nights'
+import { drawnOn, finishedNights } from '@/components/nights'
 import { isTroubled } from '@/components/states'
 import { ago } from '@/components/time'
 import { adviceFor } from '@/components/tonight/advice'
@@ -51,7 +51,7 @@ export function SystemTonight({ vessel, system }: { vessel: Vessel; system: Syst
         {tonight ? (
           <div className="mt-5">
             <NightStrip
-              night={{ ...tonight, expected: expectedMinutes(coming, summary.data, tonight.quiet) }}
+              night={{ ...drawnOn(tonight), expected: expectedMinutes(coming, summary.data, tonight.quiet) }}
               height={44}
               calm={calm}
               bold

@@ -13,6 +13,13 @@ import { useVessel } from '@/components/vessel/use-vessel'
 import { vesselTabs } from '@/components/vessel/tabs'
 import type { List, System, Vessel } from '@/shared/schemas'
 
+/** How far the logger's clock is off, whole seconds: "+2 s", "right". */
+function clockWords(offsetSeconds: number): string {
+  const seconds = Math.round(offsetSeconds)
+  if (seconds === 0) return 'right'
+  return `${seconds < 0 ? '−' : '+'}${Math.abs(seconds)} s`
+}
+
 const TAB =
   'inline-flex min-h-11 items-center border-b-2 border-transparent whitespace-nowrap text-ink-2 no-underline hover:text-ink aria-[current=page]:border-ink aria-[current=page]:font-semibold aria-[current=page]:text-ink'
 
@@ -60,9 +67,7 @@ export function VesselFrame({ id, children }: { id: string; children: ReactNode 
     [vessel.berth && `Berth ${vessel.berth}`, vessel.harbour, vessel.owner && `owner ${vessel.owner.name}`]
       .filter(Boolean)
       .join(' · '),
-    clockOff === null
-      ? heard
-      : `${heard} · clock ${clockOff < 0 ? '−' : '+'}${Math.abs(Math.round(clockOff))} s`,
+    clockOff === null ? heard : `${heard} · clock ${clockWords(clockOff)}`,
   ].filter((line) => line !== '')
   return (
     <>

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { expectedMinutes, minuteOf, runsToSay, tonightOf } from '@/components/tonight/night-plan'
-import { finishedNights } from '@/components/nights'
+import { drawnOn, finishedNights } from '@/components/nights'
+import { nightWord } from '@/components/tonight/last-nights'
 import { clockChanges } from '@/components/tonight/use-night-offsets'
 import { hold, outlook, summary } from './fixtures'
 
@@ -78,5 +79,26 @@ describe('the nights that are over', () => {
     expect(dates('2026-12-01T22:40:00Z')).toEqual(['2026-11-29', '2026-11-30'])
     expect(dates('2026-12-02T10:59:00Z')).toEqual(['2026-11-29', '2026-11-30'])
     expect(dates('2026-12-02T11:00:00Z')).toEqual(['2026-11-29', '2026-11-30', '2026-12-01'])
+  })
+})
+
+describe('a night whose list was cut short', () => {
+  const night = {
+    date: '2026-12-01',
+    quiet: [240, 780] as [number, number],
+    runs: [200, 210, 220],
+    flushes: [],
+    more: 100,
+  }
+  it('is drawn on at the pace of what was listed, to the morning', () => {
+    const drawn = drawnOn(night)
+    expect(drawn.runs.slice(0, 5)).toEqual([200, 210, 220, 230, 240])
+    expect(drawn.runs[drawn.runs.length - 1]).toBe(960)
+    expect(nightWord(night)).toBe('c. 54 runs')
+  })
+  it('is left alone when nothing is missing', () => {
+    expect(drawnOn({ ...night, more: 0 }).runs).toEqual([200, 210, 220])
+    expect(nightWord({ ...night, more: 0, runs: [200, 300] })).toBe('1 run')
+    expect(nightWord({ ...night, more: 0, runs: [] })).toBe('quiet')
   })
 })

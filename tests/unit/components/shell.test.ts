@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { evidenceLines } from '@/components/notices/evidence'
+import { holdEvidence, stripEvidence } from '@/components/notices/evidence-shapes'
 import { noticesFinding } from '@/components/notices/finding'
 import { isCurrent, navigationOf } from '@/components/shell/navigation'
 import { parseTheme, parseUnits, unitsText } from '@/components/shell/preferences'
@@ -98,5 +99,14 @@ describe('an address with its query', () => {
   it('leaves out what is not said', () => {
     expect(withQuery('/api/x', { a: 1, b: undefined, c: '' })).toBe('/api/x?a=1')
     expect(withQuery('/api/x', {})).toBe('/api/x')
+  })
+})
+
+describe('the evidence that is drawn', () => {
+  it('is a night where one was foretold, a hold time where one is held against a limit, else nothing', () => {
+    expect(stripEvidence({ strip: { quiet: [240, 780], expected: [300] } })?.expected).toEqual([300])
+    expect(stripEvidence({ strip: { quiet: [240] } })).toBeNull()
+    expect(holdEvidence({ holdSeconds: 5040, limitSeconds: 7200 })?.limitSeconds).toBe(7200)
+    expect(holdEvidence({ airC: 2 })).toBeNull()
   })
 })
