@@ -105,6 +105,9 @@ function timeOrder(records: RecordColumns): Uint32Array {
   return sorted ? usable : usable.sort((a, b) => (at[a] ?? 0) - (at[b] ?? 0) || a - b)
 }
 
+/** The channels of the sample being merged; one for all, since there may be a million. */
+const MERGED = new Float64Array(CHANNELS.length)
+
 /** Merges the entries of one time into the next sample of the batch; false when none of them was usable. */
 function mergeOne(
   records: RecordColumns,
@@ -114,7 +117,7 @@ function mergeOne(
   at: number,
   batch: Batch,
 ): boolean {
-  const values = [NaN, NaN, NaN, NaN, NaN]
+  MERGED.fill(NaN)
   let vacuumEntry = -1
   let conflicting = 0
   let usable = 0
@@ -123,14 +126,16 @@ function mergeOne(
     if (records.reason[i] !== 0) continue
     const channel = records.channel[i] ?? 0
     const value = records.value[i] ?? NaN
-    const stands = values[channel] ?? NaN
+    const stands = MERGED[channel] ?? NaN
     if (Number.isNaN(stands)) {
-      values[channel] = value
+      MERGED[channel] = value
       if (channel === 1) vacuumEntry = i
       usable += 1
     } else if (stands !== value) conflicting = 1
   }
-  const [pump = NaN, vacuum = NaN, air = NaN, barometer = NaN, supply = NaN] = values
+  const pump = MERGED[0] ?? NaN
+  const vacuum = MERGED[1] ?? NaN
+  const barometer = MERGED[3] ?? NaN
   const ambient = Number.isNaN(barometer) ? STANDARD_PRESSURE_PA : barometer
   const impossible = vacuumEntry !== -1 && vacuum > ambient
   if (impossible) {
@@ -142,9 +147,9 @@ function mergeOne(
   batch.at[n] = at
   batch.pumpOn[n] = Number.isNaN(pump) ? -1 : pump
   batch.vacuumPa[n] = impossible ? NaN : vacuum
-  batch.airC[n] = air
+  batch.airC[n] = MERGED[2] ?? NaN
   batch.barometerPa[n] = barometer
-  batch.supplyV[n] = supply
+  batch.supplyV[n] = MERGED[4] ?? NaN
   batch.conflicting[n] = conflicting
   batch.count = n + 1
   return true

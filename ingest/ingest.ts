@@ -12,7 +12,7 @@ import { check, endsOf, possibleSerials, type Checked } from '@/ingest/check'
 import { clockOffsetSeconds, shiftSeconds } from '@/ingest/clock'
 import { parseCsv } from '@/ingest/parse-csv'
 import { parseSenml } from '@/ingest/parse-senml'
-import { formatOf, readBody, type Format } from '@/ingest/read-body'
+import { formatOf, inTurn, readBody, textOf, type Format } from '@/ingest/read-body'
 import type { Reason, RecordColumns } from '@/ingest/records'
 import { store } from '@/ingest/store'
 import { lockReached, takeIn } from '@/ingest/take-in'
@@ -43,7 +43,10 @@ export async function ingest(request: Request, receivedAt: Date): Promise<Upload
   const format = formatOf(request.headers.get('content-type'))
   const key = idempotencyKey(request.headers)
   const body = await readBody(request)
-  const records = format === 'senml' ? await parseSenml(body, receivedAt.getTime()) : parseCsv(body)
+  const records = await inTurn(body, async () => {
+    const text = await textOf(body)
+    return format === 'senml' ? parseSenml(text, receivedAt.getTime()) : parseCsv(text)
+  })
   const offsetSeconds = clockOffsetSeconds(request.headers.get('date'), receivedAt.getTime())
   return asIngest((trx) => takeUpload(trx, { sender, format, key, records, offsetSeconds, receivedAt }))
 }

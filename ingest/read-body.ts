@@ -27,23 +27,54 @@ export function formatOf(contentType: string | null): Format {
   return format
 }
 
+/** A body as it was sent. */
+export interface SentBody {
+  bytes: Buffer
+  gzip: boolean
+}
+
 /**
- * Reads a request's body to text: counted while it arrives, and stopped while unpacking if it grows too large.
- * @throws Problem `too-large`, `wrong-media-type` (an encoding other than gzip), `not-parseable` (broken gzip or UTF-8).
+ * Reads a request's body, counted while it arrives.
+ * @throws Problem `too-large`, `wrong-media-type` (an encoding other than gzip).
  */
-export async function readBody(request: Request): Promise<string> {
+export async function readBody(request: Request): Promise<SentBody> {
   const encoding = (request.headers.get('content-encoding') ?? 'identity').trim().toLowerCase()
   if (encoding !== 'identity' && encoding !== 'gzip')
     throw new Problem('wrong-media-type', 'Send the body plain or with Content-Encoding: gzip.', {
       headers: { 'accept-encoding': 'gzip' },
     })
-  const sent = await collect(request)
-  const bytes = encoding === 'gzip' ? await unpack(sent) : sent
+  return { bytes: await collect(request), gzip: encoding === 'gzip' }
+}
+
+/**
+ * A body's text: stopped while unpacking if it grows too large.
+ * @throws Problem `too-large`, `not-parseable` (broken gzip or UTF-8).
+ */
+export async function textOf({ bytes, gzip }: SentBody): Promise<string> {
+  const unpacked = gzip ? await unpack(bytes) : bytes
   try {
-    return new TextDecoder('utf-8', { fatal: true }).decode(bytes)
+    return new TextDecoder('utf-8', { fatal: true }).decode(unpacked)
   } catch {
     throw new Problem('not-parseable', 'The body is not UTF-8 text. Send it in UTF-8.')
   }
+}
+
+/** A body that may unpack to more than this is read while no other such body is. */
+const LARGE_BYTES = 1024 * 1024
+/** Sensor data seldom packs better than this. */
+const USUAL_PACKING = 10
+
+let lastLarge: Promise<unknown> = Promise.resolve()
+
+/**
+ * Runs `work` on a body at once, or, when it is a large one, after the large ones before it: what a process holds in
+ * memory is one backlog's text, however many boats come back from sea on the same evening.
+ */
+export function inTurn<T>({ bytes, gzip }: SentBody, work: () => Promise<T>): Promise<T> {
+  if (bytes.byteLength * (gzip ? USUAL_PACKING : 1) <= LARGE_BYTES) return work()
+  const turn = lastLarge.then(work)
+  lastLarge = turn.catch(() => undefined)
+  return turn
 }
 
 async function collect(request: Request): Promise<Buffer> {

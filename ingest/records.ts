@@ -99,10 +99,17 @@ const RANGES: readonly (readonly [number, number])[] = [
   [0, 60],
 ]
 
-/** Rounds a value and judges it by what its channel can show at all; the ambient is looked at later. */
+/** What speaks against a rounded value by what its channel can show at all (0 = nothing); ambient is looked at later. */
+export function judgeValue(channel: number, rounded: number): number {
+  if (!Number.isFinite(rounded)) return BAD_VALUE
+  const range = RANGES[channel]
+  return range !== undefined && (rounded < range[0] || rounded > range[1]) ? IMPOSSIBLE : 0
+}
+const BAD_VALUE = reasonCode('bad-value')
+const IMPOSSIBLE = reasonCode('impossible')
+
+/** Rounds a value and judges it. `takeValue(2, 85.004) // { value: 85, reason: 0 }` */
 export function takeValue(channel: number, value: number): { value: number; reason: number } {
-  if (!Number.isFinite(value)) return { value: NaN, reason: reasonCode('bad-value') }
   const rounded = roundChannel(channel, value)
-  const [low, high] = RANGES[channel] ?? [-Infinity, Infinity]
-  return { value: rounded, reason: rounded < low || rounded > high ? reasonCode('impossible') : 0 }
+  return { value: rounded, reason: judgeValue(channel, rounded) }
 }

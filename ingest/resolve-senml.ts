@@ -1,4 +1,13 @@
-import { CHANNELS, NO_CHANNEL, RecordColumns, reasonCode, roundTime, takeValue } from '@/ingest/records'
+import {
+  CHANNELS,
+  judgeValue,
+  NO_CHANNEL,
+  RecordColumns,
+  reasonCode,
+  roundChannel,
+  roundTime,
+  type Channel,
+} from '@/ingest/records'
 import { Problem } from '@/lib/problem'
 
 /** RFC 8428 section 4.5.3: a time below this is relative to "now". */
@@ -6,16 +15,21 @@ const RELATIVE_BELOW_SECONDS = 2 ** 28
 /** RFC 8428 section 4.4: the version spoken here. */
 const VERSION = 10
 
-/** Factors to Pa, °C and V by channel; hPa and kPa are secondary units in the manner of RFC 8798. */
-const UNITS = new Map([
-  ['vacuum Pa', 1],
-  ['vacuum hPa', 100],
-  ['vacuum kPa', 1000],
-  ['air Cel', 1],
-  ['barometer Pa', 1],
-  ['barometer hPa', 100],
-  ['supply V', 1],
-])
+/** By channel, factors to Pa, °C and V; hPa and kPa are secondary units in the manner of RFC 8798. */
+const UNITS: Record<Channel, ReadonlyMap<unknown, number>> = {
+  pump: new Map(),
+  vacuum: new Map([
+    ['Pa', 1],
+    ['hPa', 100],
+    ['kPa', 1000],
+  ]),
+  air: new Map([['Cel', 1]]),
+  barometer: new Map([
+    ['Pa', 1],
+    ['hPa', 100],
+  ]),
+  supply: new Map([['V', 1]]),
+}
 /** RFC 8428 section 4.5.1. */
 const NAME = /^[A-Za-z0-9][A-Za-z0-9\-:./_]*$/
 
@@ -39,6 +53,7 @@ interface Name {
   channel: number
   position: number
   valid: boolean
+  units: ReadonlyMap<unknown, number>
 }
 
 const refused = (index: number, what: string): Problem =>
@@ -51,6 +66,7 @@ const refused = (index: number, what: string): Problem =>
 export class SenmlResolver {
   readonly columns = new RecordColumns()
   private readonly names = new Map<string, Name>()
+  private reason = 0
   private baseName = ''
   private baseTime = 0
   private baseUnit: string | undefined
@@ -76,8 +92,8 @@ export class SenmlResolver {
       columns.push(index, NaN, false, name.channel, NaN, reasonCode('bad-value'), name.position)
       return
     }
-    const { value, reason } = this.valueOf(record, name)
-    columns.push(index, at, relative, name.channel, value, reason, name.position)
+    const value = this.valueOf(record, name)
+    columns.push(index, at, relative, name.channel, value, this.reason, name.position)
   }
 
   private takeBase({ bn, bt, bu, bv, bver }: SenmlFields, index: number): void {
@@ -118,30 +134,38 @@ export class SenmlResolver {
       channel: channel === -1 ? NO_CHANNEL : channel,
       position: this.columns.names.push(full) - 1,
       valid: NAME.test(full),
+      units: UNITS[CHANNELS[channel] ?? 'pump'],
     }
     this.names.set(full, name)
     return name
   }
 
-  private valueOf({ u, v, vs, vb, vd }: SenmlFields, name: Name): { value: number; reason: number } {
-    if (name.channel === NO_CHANNEL) return UNKNOWN_CHANNEL
+  /** The record's value in our units, rounded; what speaks against it is left in `reason`. */
+  private valueOf({ u, v, vs, vb, vd }: SenmlFields, name: Name): number {
+    this.reason = 0
+    if (name.channel === NO_CHANNEL) return this.refuse(UNKNOWN_CHANNEL)
     const given =
       Number(v !== undefined) + Number(vs !== undefined) + Number(vb !== undefined) + Number(vd !== undefined)
-    if (!name.valid || given > 1) return BAD_VALUE
-    if (name.channel === 0) return typeof vb === 'boolean' ? (vb ? PUMP_ON : PUMP_OFF) : BAD_VALUE
+    if (!name.valid || given > 1) return this.refuse(BAD_VALUE)
+    if (name.channel === 0) return typeof vb === 'boolean' ? Number(vb) : this.refuse(BAD_VALUE)
 
     // Of v and bv a missing one counts as nought as long as the other is there (RFC 8428 section 4.1).
     const base = this.baseValue
     const value = typeof v === 'number' ? v + (base ?? 0) : given === 0 && base !== undefined ? base : NaN
-    if (Number.isNaN(value)) return BAD_VALUE
-    const unit = u === undefined ? this.baseUnit : u
-    const factor = typeof unit === 'string' ? UNITS.get(`${CHANNELS[name.channel]} ${unit}`) : undefined
-    return factor === undefined ? UNKNOWN_UNIT : takeValue(name.channel, value * factor)
+    if (!Number.isFinite(value)) return this.refuse(BAD_VALUE)
+    const factor = name.units.get(u === undefined ? this.baseUnit : u)
+    if (factor === undefined) return this.refuse(UNKNOWN_UNIT)
+    const rounded = roundChannel(name.channel, value * factor)
+    this.reason = judgeValue(name.channel, rounded)
+    return rounded
+  }
+
+  private refuse(reason: number): number {
+    this.reason = reason
+    return NaN
   }
 }
 
-const UNKNOWN_CHANNEL = { value: NaN, reason: reasonCode('unknown-channel') }
-const UNKNOWN_UNIT = { value: NaN, reason: reasonCode('unknown-unit') }
-const BAD_VALUE = { value: NaN, reason: reasonCode('bad-value') }
-const PUMP_ON = { value: 1, reason: 0 }
-const PUMP_OFF = { value: 0, reason: 0 }
+const UNKNOWN_CHANNEL = reasonCode('unknown-channel')
+const UNKNOWN_UNIT = reasonCode('unknown-unit')
+const BAD_VALUE = reasonCode('bad-value')

@@ -23,8 +23,9 @@ const RECORDS_A_TURN = 20_000
 class OutOfTheOrdinary extends Error {}
 
 /**
- * Reads a plain SenML pack straight into a resolver, without an object a record: four times as fast as JSON.parse and
- * a tenth of its memory on a backlog. Plain = an array of flat objects; no escapes in texts, no nulls.
+ * Reads a plain SenML pack straight into a resolver, without an object a record: a backlog of weeks is a million of
+ * them, and JSON.parse would make them all at once while every other request waits. Plain = an array of flat
+ * objects; no escapes in texts, no nulls.
  * @returns false when the pack is not plain (and the resolver is spoilt): read it with JSON.parse instead.
  * @throws Problem from the resolver, for a record that cannot be understood.
  */

@@ -154,6 +154,7 @@ function lacks(batch: Batch, i: number, old: StoredSample): boolean {
 }
 
 function pick(batch: Batch, positions: number[]): SampleColumns {
+  if (positions.length === batch.count) return batch
   const column = (values: Float64Array) => Float64Array.from(positions, (position) => values[position] ?? NaN)
   return {
     count: positions.length,

@@ -139,8 +139,10 @@ export function readingsOf(options: {
   intervalSeconds?: number
   seed?: number
   leakPaPerHour?: number
+  /** Seconds between readings of air, barometer and supply. */
+  weatherSeconds?: number
 }): Reading[] {
-  const { fromSeconds, hours, intervalSeconds = 60, leakPaPerHour = 2_500 } = options
+  const { fromSeconds, hours, intervalSeconds = 60, leakPaPerHour = 2_500, weatherSeconds = 300 } = options
   const random = lcg(options.seed ?? 1)
   const readings: Reading[] = []
   let vacuum = 33_864
@@ -156,7 +158,7 @@ export function readingsOf(options: {
     if (random() < 0.00003) silentUntil = s + 3_600 * random()
     if (s < silentUntil || (s % intervalSeconds !== 0 && pump === before)) continue
     const reading: Reading = { t: fromSeconds + s, vacuum: Math.round(vacuum + 40 * (random() - 0.5)), pump }
-    if (s % 300 === 0) {
+    if (s % weatherSeconds === 0) {
       reading.air = Math.round((17 + 4 * Math.sin((s / 86_400) * 2 * Math.PI)) * 10) / 10
       reading.barometer = 101_000 + Math.round(300 * Math.sin(s / 40_000))
       reading.supply = 12.6
