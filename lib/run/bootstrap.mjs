@@ -37,6 +37,16 @@ const hasPostgres = () =>
   readdirSync('/usr/lib/postgresql').some(
     (v) => Number(v) >= 15 && existsSync(`/usr/lib/postgresql/${v}/bin/initdb`),
   )
+/** Nights are counted by the operating system's zone rules; those of before 2026 are an hour wrong in places. */
+const hasZones = () => {
+  try {
+    return (
+      Number(readFileSync('/usr/share/zoneinfo/tzdata.zi', 'utf8').match(/^# version (\d{4})/)?.[1]) >= 2026
+    )
+  } catch {
+    return false
+  }
+}
 const hasChromium = () => existsSync('/usr/bin/chromium')
 
 /**
@@ -44,18 +54,24 @@ const hasChromium = () => existsSync('/usr/bin/chromium')
  * @param {{ postgres?: boolean, chromium?: boolean }} wanted
  */
 export function ensureDebianPackages(wanted) {
+  const oldZones = wanted.postgres && !hasZones()
   const missing = [
     ...(wanted.postgres && !hasPostgres() ? ['postgresql'] : []),
     ...(wanted.chromium && !hasChromium() ? ['chromium'] : []),
   ]
-  if (missing.length === 0) return
-  const command = `apt-get install -y ${missing.join(' ')}`
+  if (missing.length === 0 && !oldZones) return
+  if (missing.length === 0 && !isRoot()) {
+    console.warn('The time zone data are older than 2026; update them with: apt-get install tzdata')
+    return
+  }
+  const packages = [...missing, ...(oldZones ? ['tzdata'] : [])]
+  const command = `apt-get install -y ${packages.join(' ')}`
   if (!isRoot()) giveUp(`${missing.join(' and ')} must be installed first, by an administrator: ${command}`)
-  console.log(`Installing ${missing.join(' and ')} from Debian's packages …`)
+  console.log(`Installing ${packages.join(' and ')} from Debian's packages …`)
   const env = { ...process.env, DEBIAN_FRONTEND: 'noninteractive' }
   const quiet = { env, stdio: ['ignore', 'ignore', 'inherit'] }
   spawnSync('apt-get', ['update', '-qq'], quiet)
-  const done = spawnSync('apt-get', ['install', '-y', '-qq', '--no-install-recommends', ...missing], quiet)
+  const done = spawnSync('apt-get', ['install', '-y', '-qq', '--no-install-recommends', ...packages], quiet)
   if (done.status !== 0) giveUp(`Debian's packages could not be installed; try: ${command}`)
   // Debian starts a server of its own at installation; ours is private and needs none beside it.
   if (missing.includes('postgresql')) spawnSync('pg_ctlcluster', ['15', 'main', 'stop'], { stdio: 'ignore' })

@@ -29,18 +29,23 @@ const check = async (name, args) => {
 }
 
 if (only.length === 0) {
+  // The route types that Next writes are part of the program, so they come before the types.
+  const types = run(['node_modules/next/dist/bin/next', 'typegen']).then(() =>
+    check('types', ['node_modules/typescript/bin/tsc', '--noEmit']),
+  )
   await check('format', ['node_modules/prettier/bin/prettier.cjs', '--check', '--log-level', 'warn', '.'])
   await check('lint', ['node_modules/eslint/bin/eslint.js', '.', '--max-warnings', '0'])
-  // The route types that Next writes are part of the program, so they come first.
-  await run(['node_modules/next/dist/bin/next', 'typegen'])
-  await check('types', ['node_modules/typescript/bin/tsc', '--noEmit'])
+  await types
 }
 
 mkdirSync('.data', { recursive: true })
 const report = path.join(ROOT, '.data', 'test-report.json')
 rmSync(report, { force: true })
+// Migrations are loaded by Knex, outside the test runner's own loader.
 const code = await run(
   [
+    '--import',
+    'tsx',
     'node_modules/vitest/vitest.mjs',
     'run',
     '--reporter=default',
