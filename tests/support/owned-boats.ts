@@ -6,6 +6,7 @@ import {
   flowForBoatHold,
   simulateBoat,
   type BoatOverrides,
+  type BoatState,
   type SimSample,
 } from '@/simulator/boat'
 
@@ -69,11 +70,12 @@ export async function joinShop(knex: Knex, shopId: string, personId: string, rol
 /** A vessel with one system, a fitted logger, its owner, and a shop that may see its figures. */
 export async function makeBoat(knex: Knex, options: BoatOptions): Promise<Boat> {
   serial += 1
+  const number = serial
   const ownerId =
     options.ownerId ??
     (await makePerson(knex, {
       name: `Owner of ${options.name}`,
-      email: `owner${serial}.${process.pid}@boats.example`,
+      email: `owner${number}.${process.pid}@boats.example`,
     }))
   const [vessel] = await knex('vessel')
     .insert({
@@ -99,7 +101,7 @@ export async function makeBoat(knex: Knex, options: BoatOptions): Promise<Boat> 
   })
   const [logger] = await knex('logger')
     .insert({
-      serial: `T${process.pid}-${serial}`,
+      serial: `T${process.pid}-${number}`,
       interval_seconds: 60,
       channels: knex.raw("array['pump','vacuum','air','barometer','supply']"),
     })
@@ -134,7 +136,10 @@ export interface Life {
   overrides?: BoatOverrides
 }
 
-/** Simulates a life and takes it in as an upload received at its end (or later). */
+/** How each boat's last stretch ended, for a next one that begins there. */
+const lives = new Map<string, { toMs: number; end: BoatState }>()
+
+/** Simulates a life (going on where the last one ended) and takes it in as an upload received at its end (or later). */
 export async function live(
   knex: Knex,
   boat: Boat,
@@ -153,7 +158,11 @@ export async function live(
           },
         ]
   const spec = { ...plain, leaks: [...plain.leaks, ...leaks] }
-  await upload(knex, boat, simulateBoat(spec, life.fromMs, life.toMs).samples, receivedAt)
+  const before = lives.get(boat.systemId)
+  const resume = before?.toMs === life.fromMs ? before.end : undefined
+  const { samples, end } = simulateBoat(spec, life.fromMs, life.toMs, resume === undefined ? {} : { resume })
+  lives.set(boat.systemId, { toMs: life.toMs, end })
+  await upload(knex, boat, samples, receivedAt)
 }
 
 /** Takes samples in as the boat's own logger sends them. */
