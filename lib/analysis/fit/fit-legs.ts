@@ -30,7 +30,8 @@ export interface LegFit {
   memoryHours: number
 }
 
-const MEMORIES_HOURS = [8, 24, 72, 240] as const
+const LONGEST_MEMORY_HOURS = 240
+const MEMORIES_HOURS = [8, 24, 72, LONGEST_MEMORY_HOURS] as const
 const FLOOR = 0.01
 
 /**
@@ -47,12 +48,7 @@ export function fitLegs(input: LegFitInput): LegFit | null {
   }
   const all = input.legs.flatMap((leg) => legEquations(leg, frame) ?? [])
   if (all.length === 0) return null
-  const stepPa = gaugeStepPa(input.legs)
-  let fit: Weighted | null = null
-  for (const memoryHours of MEMORIES_HOURS) {
-    fit = weightedFit(all, input.at, memoryHours, stepPa)
-    if (fit !== null && fit.enough) break
-  }
+  const fit = weightedFit(all, input.at, memoryHoursOf(all, input.at), gaugeStepPa(input.legs))
   return fit === null ? null : asLegFit(fit, input, frame)
 }
 
@@ -61,7 +57,20 @@ interface Weighted {
   jackknife: Float64Array[]
   shares: LegShare[]
   memoryHours: number
-  enough: boolean
+}
+
+const recencyOf = (leg: LegEquations, atMs: number, memoryHours: number): number =>
+  Math.exp(-Math.max(0, atMs - (leg.startedAt + leg.endedAt) / 2) / 3_600_000 / memoryHours)
+
+/** The shortest memory that still holds a few legs and several hours of them. */
+function memoryHoursOf(all: readonly LegEquations[], atMs: number): number {
+  const enough = MEMORIES_HOURS.find((memoryHours) => {
+    const worths = all.map((leg) => recencyOf(leg, atMs, memoryHours))
+    const legsWorth = worths.reduce((sum, worth) => sum + worth, 0)
+    const hoursWorth = worths.reduce((sum, worth, i) => sum + worth * (all[i]?.hours ?? 0), 0)
+    return legsWorth >= 3 && hoursWorth >= 5 && legsWorth * hoursWorth >= 40
+  })
+  return enough ?? LONGEST_MEMORY_HOURS
 }
 
 function weightedFit(
@@ -72,16 +81,11 @@ function weightedFit(
 ): Weighted | null {
   const shares: LegShare[] = all.map((leg) => ({
     leg,
-    recency: Math.exp(-Math.max(0, atMs - (leg.startedAt + leg.endedAt) / 2) / 3_600_000 / memoryHours),
+    recency: recencyOf(leg, atMs, memoryHours),
     offPaPerHour: 0,
     variance: 0,
     aside: false,
   }))
-  const sumOf = (pick: (share: LegShare) => number) => shares.reduce((sum, share) => sum + pick(share), 0)
-  const legsWorth = sumOf((share) => share.recency)
-  const hoursWorth = sumOf((share) => share.recency * share.leg.hours)
-  const enough = legsWorth >= 3 && hoursWorth >= 5 && legsWorth * hoursWorth >= 40
-
   let noise = { variance: 100, inflation: 2 }
   let tau2 = RATE_SIGMA.always ** 2
   let solution: Solution | null = null
@@ -97,7 +101,7 @@ function weightedFit(
   const settled = solution
   const used = shares.filter((share) => !share.aside)
   const jackknife = used.length < 3 ? [] : leaveOneOut(shares, noise, tau2, settled.values)
-  return { solution, jackknife, shares, memoryHours, enough }
+  return { solution, jackknife, shares, memoryHours }
 }
 
 function asLegFit(fit: Weighted, input: LegFitInput, frame: BandFrame): LegFit {
@@ -108,21 +112,21 @@ function asLegFit(fit: Weighted, input: LegFitInput, frame: BandFrame): LegFit {
     standardPressurePa: frame.standardPressurePa,
   })
   const bandPa = input.cutOutPa - input.cutInPa
-  const rateOf = (values: Float64Array): number =>
-    bandPa / (holdSecondsOf(lawOf(values), input.cutOutPa, input.cutInPa) / 3600)
   const { values, covariance } = fit.solution
   const law = lawOf(values)
-  const ratePaPerHour = rateOf(values)
+  const holdSeconds = holdSecondsOf(law, input.cutOutPa, input.cutInPa)
+  const ratePaPerHour = bandPa / (holdSeconds / 3600)
   const modelSigma = Math.sqrt(at(covariance, 0) + at(covariance, UNKNOWNS + 1) + 2 * at(covariance, 1))
   const used = fit.shares.filter((share) => !share.aside)
   const n = fit.jackknife.length
-  const jackknifeMean = fit.jackknife.reduce((sum, one) => sum + rateOf(one), 0) / Math.max(1, n)
-  const jackknifeSquares = fit.jackknife.reduce((sum, one) => sum + (rateOf(one) - jackknifeMean) ** 2, 0)
+  const midRates = fit.jackknife.map((one) => at(one, 0) + at(one, 1))
+  const jackknifeMean = midRates.reduce((sum, one) => sum + one, 0) / Math.max(1, n)
+  const jackknifeSquares = midRates.reduce((sum, one) => sum + (one - jackknifeMean) ** 2, 0)
   const jackknifeSigma = n < 3 ? 0 : Math.sqrt(((n - 1) / n) * jackknifeSquares)
   return {
     law,
     gasResponse: [at(values, 2), at(values, 3), at(values, 4)],
-    holdSeconds: holdSecondsOf(law, input.cutOutPa, input.cutInPa),
+    holdSeconds,
     ratePaPerHour,
     rateSigma: Math.hypot(Math.max(modelSigma, jackknifeSigma), (FLOOR / 1.96) * ratePaPerHour),
     legs: used.length,
