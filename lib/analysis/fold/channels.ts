@@ -19,28 +19,30 @@ export function gapLimitMs(state: FoldState): number {
 
 /** Takes in air, barometer and supply, and lets the lagged copies of the air follow. */
 export function takeWeather(channels: Channels, sample: Sample): void {
-  if (sample.airC !== null) {
-    const [lag0, lag1] = channels.laggedAirC
-    const known = channels.airAt !== null && sample.at - channels.airAt <= LAG_RESTART_MS
-    if (known && channels.airC !== null && channels.airAt !== null && lag0 !== null && lag1 !== null) {
-      const seconds = (sample.at - channels.airAt) / SECOND
-      channels.laggedAirC[0] = follow(lag0, channels.airC, sample.airC, seconds, LAG_SECONDS[0])
-      channels.laggedAirC[1] = follow(lag1, channels.airC, sample.airC, seconds, LAG_SECONDS[1])
-    } else {
-      channels.laggedAirC[0] = sample.airC
-      channels.laggedAirC[1] = sample.airC
-    }
-    channels.airC = sample.airC
-    channels.airAt = sample.at
-  }
+  if (sample.airC !== null) takeAir(channels, sample.at, sample.airC + 0)
   if (sample.barometerPa !== null) {
     channels.barometerPa = sample.barometerPa
     channels.barometerAt = sample.at
   }
   if (sample.supplyV !== null) {
-    channels.supplyV = sample.supplyV
+    channels.supplyV = sample.supplyV + 0
     channels.supplyAt = sample.at
   }
+}
+
+function takeAir(channels: Channels, at: Instant, airC: number): void {
+  const [lag0, lag1] = channels.laggedAirC
+  const { airC: beforeC, airAt } = channels
+  if (beforeC !== null && airAt !== null && lag0 !== null && lag1 !== null && at - airAt <= LAG_RESTART_MS) {
+    const seconds = (at - airAt) / SECOND
+    channels.laggedAirC[0] = follow(lag0, beforeC, airC, seconds, LAG_SECONDS[0]) + 0
+    channels.laggedAirC[1] = follow(lag1, beforeC, airC, seconds, LAG_SECONDS[1]) + 0
+  } else {
+    channels.laggedAirC[0] = airC
+    channels.laggedAirC[1] = airC
+  }
+  channels.airC = airC
+  channels.airAt = at
 }
 
 /** First-order lag behind air that moved in a straight line over `seconds` (exact). */

@@ -61,8 +61,9 @@ const emptyBin = (index: number): OpenBin => ({
 
 // Offsets are rounded down so that a mean never leaves its bin.
 const roundOffset = (seconds: number): number => Math.floor(seconds * 10) / 10
-const roundPa = (pa: number): number => Math.round(pa * 100) / 100
-const roundC = (celsius: number): number => Math.round(celsius * 1000) / 1000
+// Adding nought turns a minus nought, which text does not know, into a plain one.
+const roundPa = (pa: number): number => Math.round(pa * 100) / 100 + 0
+const roundC = (celsius: number): number => Math.round(celsius * 1000) / 1000 + 0
 const meanOrNull = (sum: number, count: number): number | null => (count === 0 ? null : roundC(sum / count))
 
 /** Moves the bin in the making to the closed ones, rounded. */

@@ -32,7 +32,7 @@ export function legRate(bins: LegBins): LegRow['rate'] {
   const slope = fastTheilSen(seconds, pressurePa)
   if (slope === null) return null
   const doubt = hasAir ? vapourDoubt(seconds, gasC) + temperatureDoubt(bins) : 0
-  const perHour = (perSecond: number): number => Math.round(perSecond * SECONDS_PER_HOUR * 1000) / 1000
+  const perHour = (perSecond: number): number => Math.round(perSecond * SECONDS_PER_HOUR * 1000) / 1000 + 0
   return {
     paPerHour: perHour(slope.slope),
     low: perHour(slope.low - doubt),

@@ -11,7 +11,7 @@ import type { FoldState } from './state'
 /** Adds a value to a ring, dropping the oldest beyond `length`. Values are rounded to 0.01. */
 export function pushRing(ring: number[], value: number, length = RING_LENGTH): void {
   if (!Number.isFinite(value)) return
-  ring.push(Math.round(value * 100) / 100)
+  ring.push(Math.round(value * 100) / 100 + 0)
   if (ring.length > length) ring.shift()
 }
 

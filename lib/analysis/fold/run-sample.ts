@@ -18,7 +18,7 @@ export function runSample(
   rows: Row[],
 ): void {
   run.setAside ||= state.statement !== null
-  if (supplyV !== null) run.supplyV = supplyV
+  if (supplyV !== null) run.supplyV = supplyV + 0
   if (vacuumPa === null) return
   followCrossing(state, run, at, vacuumPa)
   if (run.risingPa === null || Math.abs(vacuumPa - run.risingPa) > Math.max(RISING_PA, 3 * state.sigmaPa)) {

@@ -38,7 +38,8 @@ function takeSample(state: FoldState, sample: Sample, rows: Row[]): void {
   const pumpBefore = state.channels.pumpOn
   takeWeather(state.channels, sample)
   state.at = at
-  const measured = sample.vacuumPa !== null && Number.isFinite(sample.vacuumPa) ? sample.vacuumPa : null
+  // Text knows no minus nought: what goes in must be what a parsed state would go on with.
+  const measured = sample.vacuumPa !== null && Number.isFinite(sample.vacuumPa) ? sample.vacuumPa + 0 : null
   const vacuumPa = measured === null ? null : checkVacuum(state, at, measured, rows)
   if (readsPump(state, sample)) pumpStep(state, sample, vacuumPa, rows)
   else if (vacuumPa !== null) vacuumStep(state, sample, vacuumPa, rows)

@@ -24,7 +24,7 @@ export function vacuumStep(state: FoldState, sample: Sample, vacuumPa: number, r
   const spacingMs = state.channels.vacuumAt === null ? 0 : at - state.channels.vacuumAt
   if (state.run !== null) {
     if (!topIsOver(state, state.run, at, vacuumPa, spacingMs, rows)) {
-      if (sample.supplyV !== null) state.run.supplyV = sample.supplyV
+      if (sample.supplyV !== null) state.run.supplyV = sample.supplyV + 0
       return
     }
     finishRun(state, state.run, at, spacingMs, rows)

@@ -59,6 +59,22 @@ describe('the state as text', () => {
   })
 })
 
+describe('minus nought', () => {
+  it('is nought, as text has it: a state resumed at every sample gives the same rows', () => {
+    const told = story(EACH_MINUTE).cycle(2, 2, 8, 10, 47).hold(1200, 1)
+    const frost = [0.004, -0, -0.001, -0, 0.002, -0.004]
+    const samples = told.samples.map((sample, i) => ({ ...sample, airC: frost[i % 6] ?? null, supplyV: -0 }))
+    const items = orderItems([fitting(FROM, 60)], samples)
+    let resumed = initialState()
+    const whole = initialState()
+    for (const item of items) {
+      const rows = step(whole, item)
+      resumed = parseState(serialiseState(resumed))
+      expect(step(resumed, item)).toEqual(rows)
+    }
+  })
+})
+
 describe('the order of items', () => {
   it('is by time, facts first, and leaves its input alone', () => {
     const facts: Fact[] = [
