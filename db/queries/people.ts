@@ -5,14 +5,21 @@ export interface Credentials {
   name: string
   email: string
   passwordHash: string | null
+  /** A code is asked for besides the password. */
+  secondFactor: boolean
 }
+
+const CREDENTIALS = (trx: Trx) => ({
+  personId: 'id',
+  name: 'name',
+  email: trx.raw('email::text'),
+  passwordHash: 'password_hash',
+  secondFactor: trx.raw('totp_on_since is not null'),
+})
 
 /** What sign-in compares against; under the service's role, since nobody reads password hashes. */
 export async function readCredentials(trx: Trx, email: string): Promise<Credentials | null> {
-  const row: unknown = await trx('person')
-    .where({ email })
-    .whereNull('deleted_at')
-    .first({ personId: 'id', name: 'name', email: 'email', passwordHash: 'password_hash' })
+  const row: unknown = await trx('person').where({ email }).whereNull('deleted_at').first(CREDENTIALS(trx))
   return (row ?? null) as Credentials | null // columns named as the type just above
 }
 
@@ -20,7 +27,7 @@ export async function readCredentialsById(trx: Trx, personId: string): Promise<C
   const row: unknown = await trx('person')
     .where({ id: personId })
     .whereNull('deleted_at')
-    .first({ personId: 'id', name: 'name', email: 'email', passwordHash: 'password_hash' })
+    .first(CREDENTIALS(trx))
   return (row ?? null) as Credentials | null // columns named as the type above
 }
 

@@ -30,25 +30,30 @@ export function authOptions(): AuthOptions {
     providers: [
       CredentialsProvider({
         name: 'password',
-        credentials: { email: { label: 'E-mail', type: 'email' }, password: { type: 'password' } },
+        credentials: {
+          email: { label: 'E-mail', type: 'email' },
+          password: { type: 'password' },
+          code: { type: 'text' },
+        },
         authorize: async (credentials, request) => {
-          // The text of an error thrown here would end up in a redirect's address.
-          try {
-            const headers = new Headers(request.headers)
-            const signedIn = await signIn({
-              email: text(credentials?.email),
-              password: text(credentials?.password),
-              from: addressOf(headers),
-              userAgent: headers.get('user-agent'),
-              at: new Date(),
-            })
-            if (signedIn === null) return null
-            const { personId: id, name, email, sessionId } = signedIn
-            return { id, name, email, sessionId }
-          } catch (error) {
+          const headers = new Headers(request.headers)
+          const outcome = await signIn({
+            email: text(credentials?.email),
+            password: text(credentials?.password),
+            code: text(credentials?.code),
+            from: addressOf(headers),
+            userAgent: headers.get('user-agent'),
+            at: new Date(),
+          }).catch((error: unknown) => {
+            // The text of an error thrown here would end up in a redirect's address.
             log.error({ err: error }, 'sign-in failed')
             return null
-          }
+          })
+          if (outcome === null) return null
+          // Thrown on purpose: so the form learns, by the address it is answered with, that a code is wanted.
+          if (typeof outcome === 'string') throw new Error(outcome)
+          const { personId: id, name, email, sessionId } = outcome
+          return { id, name, email, sessionId }
         },
       }),
     ],

@@ -1,8 +1,9 @@
-import { readCredentials } from '@/db/queries/people'
+import { readCredentials, type Credentials } from '@/db/queries/people'
 import { endSession, openSession } from '@/db/queries/sessions'
 import { asIngest } from '@/db/roles'
+import { takeCode } from '@/lib/account/codes'
 import { passwordMatches } from './passwords'
-import { forgiveTry } from './throttle'
+import { countCode, forgiveTry } from './throttle'
 
 export const SESSION_SECONDS = 30 * 86_400
 
@@ -13,19 +14,29 @@ export interface SignedIn {
   email: string
 }
 
-/** Opens a session for the right password; null for anything else, after the same time. */
+/** The password is right; a code is asked for, or the one given did not fit. */
+export type CodeWanted = 'SecondFactor' | 'SecondFactorWrong'
+
+/**
+ * Opens a session for the right password, and the code where the second factor is on; null for anything else, after
+ * the same time.
+ */
 export async function signIn(attempt: {
   email: string
   password: string
+  /** Six digits from the device, or a recovery code. */
+  code: string
   from: string
   userAgent: string | null
   at: Date
-}): Promise<SignedIn | null> {
+}): Promise<SignedIn | CodeWanted | null> {
   const email = attempt.email.trim()
   const known = await asIngest((trx) => readCredentials(trx, email))
   // An endless password would only cost time; none that long was ever set.
   const password = attempt.password.slice(0, 1000)
   if (!(await passwordMatches(known?.passwordHash ?? null, password)) || known === null) return null
+  const wanted = await codeWanted(known, attempt.code.slice(0, 100), attempt.at)
+  if (wanted !== null) return wanted
   await forgiveTry(email, attempt.from)
   const sessionId = await asIngest((trx) =>
     openSession(trx, {
@@ -36,6 +47,14 @@ export async function signIn(attempt: {
     }),
   )
   return { personId: known.personId, sessionId, name: known.name, email: known.email }
+}
+
+async function codeWanted(known: Credentials, code: string, at: Date): Promise<CodeWanted | null> {
+  if (!known.secondFactor) return null
+  if (code.trim() === '') return 'SecondFactor'
+  // A known password makes six digits worth guessing: their tries are counted apart.
+  await countCode(known.personId)
+  return (await asIngest((trx) => takeCode(trx, known.personId, code, at))) ? null : 'SecondFactorWrong'
 }
 
 export async function signOut(sessionId: string, at: Date): Promise<void> {

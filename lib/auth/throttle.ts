@@ -78,6 +78,32 @@ export async function countGuess(what: string, from: string): Promise<void> {
   if (wait > 0) throw tooMany(wait)
 }
 
+const HOUR = 3600
+const mailsTo = limiter('mailto', 6, HOUR)
+const mailsFrom = limiter('mailfrom', 40, HOUR)
+const textsTo = limiter('textto', 5, HOUR)
+const textsOf = limiter('textof', 10, 24 * HOUR)
+const codes = limiter('code', 10, QUARTER_HOUR)
+
+/** Keeps people from having mail sent to others without end; the same with and without an account. @throws Problem */
+export async function countMail(email: string, from: string): Promise<void> {
+  const to = email.trim().toLowerCase().slice(0, 200)
+  const wait = Math.max(await take(mailsFrom, from.slice(0, 64)), await take(mailsTo, to))
+  if (wait > 0) throw tooMany(wait)
+}
+
+/** Texts cost money and wake people: so many an hour to a number, so many a day for a person. @throws Problem */
+export async function countText(number: string, personId: string): Promise<void> {
+  const wait = Math.max(await take(textsOf, personId), await take(textsTo, number.slice(0, 32)))
+  if (wait > 0) throw tooMany(wait)
+}
+
+/** Six digits are few: so many tries at a person's codes, from wherever. @throws Problem `too-many-requests` */
+export async function countCode(personId: string): Promise<void> {
+  const wait = await take(codes, personId)
+  if (wait > 0) throw tooMany(wait)
+}
+
 export const tooMany = (waitSeconds: number): Problem =>
   new Problem('too-many-requests', `Too many tries. Try again in ${Math.ceil(waitSeconds / 60)} min.`, {
     headers: { 'retry-after': String(waitSeconds) },

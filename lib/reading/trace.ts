@@ -1,3 +1,4 @@
+import { noteSeen } from '@/db/queries/audit'
 import { readTraceBuckets, readTraceFlushes, readTracePlace, readTraceRuns } from '@/db/queries/trace'
 import { zoneOffsets } from '@/db/queries/zones'
 import { asIngest, asPerson } from '@/db/roles'
@@ -20,7 +21,9 @@ export async function readTrace(
   const span = { from: new Date(query.from), to: new Date(query.to) }
   const resolutionMs = traceResolutionMs(span.from.getTime(), span.to.getTime(), query.points)
   const read = await asPerson(personId, async (trx) => {
-    await requireSystemRight(trx, systemId, 'fullRecord')
+    const { vesselId, owns } = await requireSystemRight(trx, systemId, 'fullRecord')
+    // The owner can read who looked; once a day is enough to know.
+    if (!owns) await noteSeen(trx, { at: now, personId, vesselId, action: 'record.seen', everyHours: 24 })
     const place = await readTracePlace(trx, systemId)
     return {
       place,

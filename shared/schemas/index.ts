@@ -1,9 +1,11 @@
 /** Everything that crosses a wire, and the types drawn from it. */
+export * from './account'
 export * from './calculators'
 export * from './commissioning'
 export * from './common'
 export * from './figures'
 export * from './health'
+export * from './joining'
 export * from './loggers'
 export * from './notices'
 export * from './people'

@@ -106,6 +106,8 @@ export type ChangeVessel = z.infer<typeof changeVesselSchema>
 /** PUT /api/vessels/{id}/aboard: null takes the word back, and flushes tell again. */
 export const setAboardSchema = z.object({
   value: z.boolean().nullable(),
+  /** Later than now: for the span from then to `until` alone, which it needs; other times keep what was said of them. */
+  from: instantSchema.optional(),
   until: instantSchema.nullable().optional(),
 })
 /** PUT /api/systems/{id}/statement */

@@ -1,5 +1,7 @@
 import type { Operation } from '../operation'
 import { commissioningOperations } from './commissionings'
+import { accountOperations } from './account'
+import { joiningOperations } from './joining'
 import { loggerOperations } from './loggers'
 import { noticeOperations } from './notices'
 import { peopleOperations } from './people'
@@ -17,6 +19,8 @@ export const OPERATIONS: readonly Operation[] = [
   ...noticeOperations,
   ...visitOperations,
   ...peopleOperations,
+  ...joiningOperations,
+  ...accountOperations,
   ...serviceOperations,
 ]
 
