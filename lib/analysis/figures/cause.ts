@@ -20,9 +20,9 @@ export function signsOf(input: FiguresInput, hold: HoldTimeEstimate | null): Fig
 }
 
 function signsFrom({ rows }: FiguresInput, wanted: (endedAt: number) => boolean): LeakSigns {
-  const holds = rows.holds.filter((hold) => !hold.setAside && wanted(hold.endedAt))
+  const holds = newest(rows.holds).filter((hold) => !hold.setAside && wanted(hold.endedAt))
   const rates = holds.flatMap((hold) => rateOfHold(hold) ?? [])
-  const recharges = rows.runs
+  const recharges = newest(rows.runs)
     .filter((run) => !run.interrupted && run.trigger !== 'startup' && wanted(run.stoppedAt))
     .flatMap((run) => run.rechargePaPerSecond ?? [])
   // Measured points, not the learned medians: a switch that drifts is seen as soon as three holds show it.
@@ -38,6 +38,13 @@ function signsFrom({ rows }: FiguresInput, wanted: (endedAt: number) => boolean)
     differentialPa: middle(differentials),
     ratio: null,
   }
+}
+
+/** As many of the newest rows as a median needs: a short-cycling pump makes hundreds a day. */
+const MOST_ROWS = 1_200
+function newest<Row extends { startedAt: number }>(rows: readonly Row[]): readonly Row[] {
+  if (rows.length <= MOST_ROWS) return rows
+  return [...rows].sort((a, b) => b.startedAt - a.startedAt).slice(0, MOST_ROWS)
 }
 
 function rateOfHold(hold: HoldRow): number | null {

@@ -47,13 +47,14 @@ function witnessesOf({ rows }: FiguresInput, hold: HoldTimeEstimate): Witness[] 
   return whole
 }
 
+const BY_HOLD_TIME: readonly SystemState[] = ['short-cycling', 'leaking', 'weeping', 'tight']
+
 function canBe(
   witness: Witness,
   state: SystemState,
   settings: { limitSeconds: number; aimSeconds: number },
 ): boolean {
-  const order: SystemState[] = ['short-cycling', 'leaking', 'weeping', 'tight']
-  const rank = (seconds: number) => order.indexOf(stateByHoldTime({ seconds, bound: null }, settings))
-  const own = order.indexOf(state)
+  const rank = (seconds: number) => BY_HOLD_TIME.indexOf(stateByHoldTime({ seconds, bound: null }, settings))
+  const own = BY_HOLD_TIME.indexOf(state)
   return rank(witness.least) <= own && own <= rank(witness.most)
 }

@@ -43,7 +43,7 @@ export interface BandFrame {
   standardPressurePa: number
 }
 
-const MAX_ROWS = 40
+const MAX_ROWS = 30
 const REFERENCE_K = 293.15
 
 /**
@@ -129,10 +129,13 @@ function squares(design: Float64Array, pressure: Float64Array, hoursOf: Float64A
     for (let j = 0; j < UNKNOWNS; j += 1) {
       const x = at(design, row * UNKNOWNS + j)
       right[j] = at(right, j) + x * y
-      for (let k = 0; k < UNKNOWNS; k += 1) {
+      for (let k = 0; k <= j; k += 1) {
         normal[j * UNKNOWNS + k] = at(normal, j * UNKNOWNS + k) + x * at(design, row * UNKNOWNS + k)
       }
     }
+  }
+  for (let j = 0; j < UNKNOWNS; j += 1) {
+    for (let k = 0; k < j; k += 1) normal[k * UNKNOWNS + j] = at(normal, j * UNKNOWNS + k)
   }
   return { design, pressure, hoursOf, count, normal, right, total, timeSquares }
 }
