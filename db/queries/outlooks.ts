@@ -197,3 +197,25 @@ export async function localMoments(trx: Trx, timeZone: string, instants: Date[])
   )) as { rows: { moment: string }[] }
   return rows.map((row) => row.moment)
 }
+
+/**
+ * Systems heard of lately whose coming night nothing was said of yet, or only in passing and a while ago.
+ * @param saidBefore what was said in passing before this instant is old.
+ */
+export async function systemsToForetell(
+  trx: Trx,
+  heardSince: Date,
+  saidBefore: Date,
+  now: Date,
+  limit: number,
+): Promise<{ systemId: string; vesselId: string }[]> {
+  const { rows } = (await trx.raw(
+    `select s.id as system_id, s.vessel_id from system_state t join system s on s.id = t.system_id
+     where t.last_heard_at >= :heardSince and not exists (
+       select 1 from outlook o where o.system_id = s.id and o.quiet_to > :now
+         and (o.detail->>'reason' <> 'provisional' or o.given_at > :saidBefore))
+     order by s.id limit :limit`,
+    { heardSince, saidBefore, now, limit },
+  )) as { rows: { system_id: string; vessel_id: string }[] }
+  return rows.map((row) => ({ systemId: String(row.system_id), vesselId: String(row.vessel_id) }))
+}

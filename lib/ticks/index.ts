@@ -9,9 +9,17 @@ import { nightTick } from '@/lib/ticks/night'
 import { runTick, type Tick } from '@/lib/ticks/run-tick'
 import { silenceTick } from '@/lib/ticks/silence'
 import { stepsTick } from '@/lib/ticks/steps'
+import { tonightTick } from '@/lib/ticks/tonight'
 
 /** What is asked every minute, most pressing first. */
-export const MINUTE_TICKS: Tick[] = [nightTick, escalationTick, silenceTick, morningTick, figuresTick]
+export const MINUTE_TICKS: Tick[] = [
+  nightTick,
+  escalationTick,
+  silenceTick,
+  morningTick,
+  figuresTick,
+  tonightTick,
+]
 /** What is asked every hour. */
 export const HOUR_TICKS: Tick[] = [partitionTick, stepsTick, housekeepingTick]
 
@@ -23,12 +31,13 @@ export async function runTicks(ticks: Tick[], now: Date): Promise<number> {
   let failed = 0
   for (const tick of ticks) {
     try {
-      const done =
-        tick.role === 'owner'
-          ? await database().transaction((trx) => runTick(trx, tick, now))
-          : await asIngest((trx) => runTick(trx, tick, now))
-      if (done !== null && Object.values(done).some((count) => count > 0)) {
-        log.info({ tick: tick.name, ...done }, 'tick')
+      for (let left = true; left;) {
+        const done = await inTransaction(tick, now)
+        // One transaction takes a batch; what is left is taken at once by the next.
+        left = (done?.left ?? 0) > 0
+        if (done !== null && Object.values(done).some((count) => count > 0)) {
+          log.info({ tick: tick.name, ...done }, 'tick')
+        }
       }
     } catch (error) {
       failed += 1
@@ -37,3 +46,8 @@ export async function runTicks(ticks: Tick[], now: Date): Promise<number> {
   }
   return failed
 }
+
+const inTransaction = (tick: Tick, now: Date): Promise<Record<string, number> | null> =>
+  tick.role === 'owner'
+    ? database().transaction((trx) => runTick(trx, tick, now))
+    : asIngest((trx) => runTick(trx, tick, now))

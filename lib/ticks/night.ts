@@ -55,11 +55,13 @@ export async function giveNights(trx: Trx, now: Date): Promise<Record<string, nu
     }
   }
   await tell(trx, eventIds, now)
+  const given = Math.min(due.length, BATCH) - failed
   return {
-    given: Math.min(due.length, BATCH) - failed,
+    given,
     warned: eventIds.length,
     failed,
-    left: Math.max(0, due.length - BATCH),
+    // Where none could be computed, asking again at once would end the same.
+    left: given > 0 ? Math.max(0, due.length - BATCH) : 0,
   }
 }
 
@@ -93,7 +95,7 @@ const isEvening = (window: NightWindow, now: Date, leadMs: number): boolean =>
 
 /** Nothing said yet, or only for want of something that may still be heard; then not oftener than every 5 min. */
 function isOpen(given: GivenOutlook | undefined, now: Date): boolean {
-  if (given === undefined) return true
+  if (given === undefined || given.reason === 'provisional') return true
   return OPEN_REASONS.includes(given.reason) && now.getTime() - given.givenAt.getTime() >= 5 * 60_000
 }
 

@@ -1,5 +1,14 @@
+import { z } from 'zod'
 import type { Trx } from '@/db/roles'
-import { addEvent, closeNotice, openNotice, openNoticesOf, snoozedKinds } from '@/db/queries/notice-writes'
+import {
+  addEvent,
+  closeNotice,
+  openNotice,
+  openNoticesOf,
+  snoozedKinds,
+  worsenNotice,
+  type OpenNotice,
+} from '@/db/queries/notice-writes'
 import { localMoments } from '@/db/queries/outlooks'
 import { legsKnown } from '@/db/queries/record-rows'
 import { statementInForce, vesselOfSystem } from '@/db/queries/judged'
@@ -57,7 +66,9 @@ async function judgeStep(trx: Trx, systemId: string, now: Date): Promise<string 
   )
   const last = steps.at(-1)
   const standing = (await openNoticesOf(trx, systemId)).find((notice) => notice.kind === 'step')
-  if (standing !== undefined) return last === undefined ? null : endIfBack(trx, standing, last, now)
+  if (standing !== undefined) {
+    return last === undefined ? null : stepFurther(trx, standing, vessel.timeZone, last, now)
+  }
   if (last === undefined || last.toPaPerHour <= last.fromPaPerHour) return null
   if (now.getTime() - last.between[1] > NEWS_MS) return null
   if ((await snoozedKinds(trx, systemId, now)).includes('step')) return null
@@ -71,16 +82,56 @@ async function openStep(
   step: Step,
   now: Date,
 ): Promise<string | null> {
-  const [since = '', until = ''] = await localMoments(
-    trx,
-    vessel.timeZone,
-    step.between.map((at) => new Date(at)),
-  )
   const opened = await openNotice(trx, {
     systemId,
     vesselId: vessel.vesselId,
     kind: 'step',
     at: now,
+    ...(await describe(trx, vessel.timeZone, step)),
+  })
+  return opened?.eventId ?? null
+}
+
+/** A step after the one that is told: down again ends it, up once more is told as worse. */
+async function stepFurther(
+  trx: Trx,
+  notice: OpenNotice,
+  timeZone: string,
+  last: Step,
+  now: Date,
+): Promise<string | null> {
+  const told = stepEvidenceSchema.safeParse(notice.evidence)
+  if (!told.success || last.between[0] < Date.parse(told.data.between[1])) return null
+  if (last.toPaPerHour <= told.data.fromPaPerHour * BACK_WITHIN) {
+    await closeNotice(trx, notice.id, now)
+    return addEvent(trx, notice.id, 'ended', {
+      at: now,
+      reason: 'The leak is back where it was before the step',
+    })
+  }
+  if (last.toPaPerHour <= told.data.toPaPerHour || notice.heldSince !== null) return null
+  const found = await describe(trx, timeZone, last)
+  await worsenNotice(trx, notice.id, found)
+  return addEvent(trx, notice.id, 'worsened', { at: now, ...found })
+}
+
+const stepEvidenceSchema = z.object({
+  fromPaPerHour: z.number(),
+  toPaPerHour: z.number(),
+  between: z.tuple([z.string(), z.string()]),
+})
+
+async function describe(
+  trx: Trx,
+  timeZone: string,
+  step: Step,
+): Promise<{ severity: number; reason: string; evidence: Record<string, unknown> }> {
+  const [since = '', until = ''] = await localMoments(
+    trx,
+    timeZone,
+    step.between.map((at) => new Date(at)),
+  )
+  return {
     severity: step.toPaPerHour / Math.max(1, step.fromPaPerHour),
     reason: `The leak grew at once between ${since} and ${until}`,
     evidence: {
@@ -91,25 +142,5 @@ async function openStep(
       sinceLocal: since,
       untilLocal: until,
     },
-  })
-  return opened?.eventId ?? null
-}
-
-async function endIfBack(
-  trx: Trx,
-  notice: { id: string; evidence: Record<string, unknown> },
-  last: Step,
-  now: Date,
-): Promise<string | null> {
-  const before = notice.evidence.fromPaPerHour
-  const isBack =
-    last.toPaPerHour < last.fromPaPerHour &&
-    typeof before === 'number' &&
-    last.toPaPerHour <= before * BACK_WITHIN
-  if (!isBack) return null
-  await closeNotice(trx, notice.id, now)
-  return addEvent(trx, notice.id, 'ended', {
-    at: now,
-    reason: 'The leak is back where it was before the step',
-  })
+  }
 }

@@ -7,6 +7,7 @@ import { openServices, type Services } from '@/lib/messages/services'
 import { tell } from '@/lib/messages/tell'
 import { outlookAt } from '@/lib/outlook/outlook-at'
 import { giveNights } from '@/lib/ticks/night'
+import { foretell } from '@/lib/ticks/tonight'
 import { lookBack } from '@/lib/ticks/morning'
 import { startMailFake, type MailFake } from '@/simulator/fakes/mail'
 import { startSmsFake, type SmsFake } from '@/simulator/fakes/sms'
@@ -202,6 +203,27 @@ describe('the evening of a leaking boat', () => {
     await tick(EVENING + HOUR)
     await sendAll(EVENING + HOUR)
     expect(mail.messages()).toHaveLength(1)
+  })
+})
+
+describe('by day', () => {
+  it('a word on the coming night is kept for the fleet, and the evening says it for good', async () => {
+    const noon = EVENING - 8 * HOUR
+    const boat = await boatOf('Saltmarsh Hare', 1.5, { until: noon })
+    await asIngest((trx) => foretell(trx, new Date(noon)))
+    expect(await outlookOf(boat)).toMatchObject({ night: '2026-03-10', detail: { reason: 'provisional' } })
+    expect((await outlookOf(boat)).chance).toBeGreaterThan(0.9)
+    expect(await asIngest((trx) => foretell(trx, new Date(noon + HOUR)))).toEqual({ foretold: 0 })
+    await live(database.knex, boat, {
+      holdHours: 1.5,
+      fromMs: noon,
+      toMs: EVENING,
+      overrides: { ...HABITS, logger: { intervalSeconds: 60 } },
+    })
+    await tick(EVENING)
+    expect((await outlookOf(boat)).detail.reason).toBe('likely-even-if-flushed-last')
+    await asIngest((trx) => foretell(trx, new Date(EVENING + 90 * 60_000)))
+    expect((await outlookOf(boat)).detail.reason).toBe('likely-even-if-flushed-last')
   })
 })
 
