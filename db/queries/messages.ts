@@ -39,7 +39,7 @@ export interface MessageFilter {
 export async function readMessages(trx: Trx, filter: MessageFilter): Promise<MessageRow[]> {
   const { rows } = await trx.raw<{ rows: MessageRow[] }>(
     `select ${COLUMNS} from message m left join person p on p.id = m.person_id
-     where m.purpose <> 'account'
+     where m.purpose <> 'account' and m.cancelled_at is null
        and (m.person_id in (select person_id from membership where shop_id = any (cast(:shops as bigint[])) and ended_at is null)
          or m.id in (select s.message_id from message_subject s join notice_event e on e.id = s.notice_event_id
            join notice n on n.id = e.notice_id join vessel v on v.id = n.vessel_id
