@@ -18,8 +18,12 @@ export function durationAndInterval(
   const value = formatDuration(seconds)
   if (low === null || high === null) return [value, low === null ? '' : formatDurationRange(low, high)]
   if (formatDuration(low) !== formatDuration(high)) return [value, formatDurationRange(low, high)]
-  return [value, `± ${formatDuration(Math.max(high - seconds, seconds - low, 1))}`]
+  return [value, `± ${roundedUp(Math.max(high - seconds, seconds - low, 1))}`]
 }
+
+/** A doubt is said no smaller than it is: whole minutes from a minute on. */
+const roundedUp = (seconds: number): string =>
+  seconds > 55 && seconds < 3600 ? `${Math.ceil(seconds / 60)} min` : formatDuration(Math.ceil(seconds))
 
 /** Hold time as it stands in a row: bound, figure with interval, or a dash. */
 export function holdWords(

@@ -31,7 +31,7 @@ export function NoticeItem({
   return (
     <li className="grid gap-x-10 border-b border-line py-4 lg:grid-cols-[minmax(0,1fr)_auto]">
       <div>
-        <h3 className="text-lead">
+        <h2>
           <span className={standing && isHot(notice.kind) ? 'text-attention' : ''}>
             {NOTICE_WORDS[notice.kind]}
           </span>
@@ -42,7 +42,7 @@ export function NoticeItem({
             </>
           ) : null}
           <span className="datum ml-3 font-normal">{noticeAge(notice, nowMs)}</span>
-        </h3>
+        </h2>
         <p className="mt-0.5 max-w-[52em]">{notice.reason}</p>
         {notice.acknowledgedAt ? (
           <p className="mt-1">

@@ -16,7 +16,7 @@ export function SetUpTab({ id }: { id: string }) {
   const total = system.parts.reduce((sum, part) => sum + (part.volumeM3 ?? 0), 0)
   return (
     <div className="mt-6 grid gap-10">
-      <div>
+      <div className="min-w-0">
         <h2 className="mb-3">The system as drawn</h2>
         {system.parts.length > 0 ? (
           <div className="overflow-x-auto" tabIndex={0} role="region" aria-label="The system as drawn">
