@@ -15,6 +15,7 @@ import { parseSenml } from '@/ingest/parse-senml'
 import { formatOf, inTurn, readBody, textOf, type Format } from '@/ingest/read-body'
 import type { Reason, RecordColumns } from '@/ingest/records'
 import { store } from '@/ingest/store'
+import { inLine } from '@/ingest/in-line'
 import { lockReached, takeIn } from '@/ingest/take-in'
 import { refuseRetired, whoSends } from '@/ingest/who-sends'
 import { Problem } from '@/lib/problem'
@@ -48,7 +49,8 @@ export async function ingest(request: Request, receivedAt: Date): Promise<Upload
     return format === 'senml' ? parseSenml(text, receivedAt.getTime()) : parseCsv(text)
   })
   const offsetSeconds = clockOffsetSeconds(request.headers.get('date'), receivedAt.getTime())
-  return asIngest((trx) => takeUpload(trx, { sender, format, key, records, offsetSeconds, receivedAt }))
+  const upload = { sender, format, key, records, offsetSeconds, receivedAt }
+  return inLine(sender.id, () => asIngest((trx) => takeUpload(trx, upload)))
 }
 
 function idempotencyKey(headers: Headers): string | null {

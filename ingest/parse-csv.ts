@@ -10,23 +10,46 @@ const NUMBER = /^[+-]?(\d+\.?\d*|\.\d+)([eE][+-]?\d+)?$/
 /** RFC 3339 section 5.6: the zone is not optional. */
 const RFC3339 = /^\d{4}-\d{2}-\d{2}[Tt ]\d{2}:\d{2}:\d{2}(\.\d+)?([Zz]|[+-]\d{2}:\d{2})$/
 
+/** So many rows are read in one go before other requests get their turn. */
+const ROWS_A_TURN = 20_000
+
 /**
  * Takes a table (RFC 4180) apart into entries, one a filled cell. Lines may end in CRLF, LF or CR.
  * @param body the table as text, first line its header.
  * @throws Problem `not-parseable` with the line, when the quotes do not close or the header is not understood.
- * @example parseCsv('time,vacuum_pa\n1700000000,30000').value[0] // 30000
+ * @example (await parseCsv('time,vacuum_pa\n1700000000,30000')).value[0] // 30000
  */
-export function parseCsv(body: string): RecordColumns {
-  const rows = readTable(body)
-  const header = rows[0]
-  if (header === undefined) throw new Problem('not-parseable', `The table is empty. ${HEADER_SENTENCE}`)
-  const { timeColumn, channelOf } = readHeader(header)
+export async function parseCsv(body: string): Promise<RecordColumns> {
   const columns = new RecordColumns()
-  for (let row = 1; row < rows.length; row += 1) {
-    const cells = rows[row]
-    if (cells !== undefined) takeRow(cells, row - 1, header.length, timeColumn, channelOf, columns)
+  let header: Header | undefined
+  let row = 0
+  for (const cells of rowsOf(body)) {
+    if (header === undefined) {
+      header = readHeader(cells)
+      continue
+    }
+    takeRow(cells, row, header, columns)
+    row += 1
+    if (row % ROWS_A_TURN === 0) await new Promise((resolve) => setImmediate(resolve))
   }
+  if (header === undefined) throw new Problem('not-parseable', `The table is empty. ${HEADER_SENTENCE}`)
   return columns
+}
+
+/** Loggers quote nothing, and then a table is lines and commas; a table with quotes is read by the library. */
+function rowsOf(body: string): Iterable<string[]> {
+  return body.includes('"') || /\r(?!\n)/.test(body) ? readTable(body) : plainRows(body)
+}
+
+function* plainRows(body: string): Generator<string[]> {
+  const start = body.startsWith('\ufeff') ? 1 : 0
+  for (let from = start; from < body.length;) {
+    const newline = body.indexOf('\n', from)
+    const end = newline === -1 ? body.length : newline
+    const line = body.slice(from, end > from && body[end - 1] === '\r' ? end - 1 : end)
+    if (line !== '') yield line.split(',')
+    from = end + 1
+  }
 }
 
 /** The cells of a table (RFC 4180 section 2), row by row; blank lines left out.
@@ -45,7 +68,14 @@ export function readTable(body: string): string[][] {
   }
 }
 
-function readHeader(header: string[]): { timeColumn: number; channelOf: number[] } {
+interface Header {
+  width: number
+  timeColumn: number
+  /** Position in CHANNELS by column; -1 = none. */
+  channelOf: number[]
+}
+
+function readHeader(header: string[]): Header {
   const words = header.map((cell) => cell.trim().toLowerCase())
   const timeColumn = words.indexOf('time')
   const channelOf = words.map((word) => HEADERS.findIndex((known) => known === word))
@@ -54,15 +84,13 @@ function readHeader(header: string[]): { timeColumn: number; channelOf: number[]
     throw new Problem('not-parseable', `A column is named twice. ${HEADER_SENTENCE}`)
   if (words.length === 1)
     throw new Problem('not-parseable', `There is no column but time. ${HEADER_SENTENCE}`)
-  return { timeColumn, channelOf }
+  return { width: words.length, timeColumn, channelOf }
 }
 
 function takeRow(
   cells: string[],
   row: number,
-  width: number,
-  timeColumn: number,
-  channelOf: number[],
+  { width, timeColumn, channelOf }: Header,
   columns: RecordColumns,
 ): void {
   const at = readTime(cells[timeColumn] ?? '')

@@ -188,15 +188,15 @@ describe('a person’s import', () => {
     const boat = await told(await newBoat(database.knex), rest)
     const without = await dump(database.knex, boat)
     const personId = await person()
-    const given = () => ({
+    const given = async () => ({
       loggerId: boat.loggerId,
       personId,
-      records: parseCsv(csv(STORY.slice(590, 910))),
+      records: await parseCsv(csv(STORY.slice(590, 910))),
       now: NOW,
     })
-    const preview = await asIngest((trx) => previewImport(trx, given()))
+    const preview = await asIngest(async (trx) => previewImport(trx, await given()))
     expect(preview.batch.count).toBe(320)
-    const imported = await asIngest((trx) => importSamples(trx, given()))
+    const imported = await asIngest(async (trx) => importSamples(trx, await given()))
     expect(imported.samples).toMatchObject({ received: 320, stored: 300, duplicate: 20 })
     expect((await dump(database.knex, boat)).samples).toHaveLength(STORY.length)
 
@@ -204,7 +204,7 @@ describe('a person’s import', () => {
     expect(await dump(database.knex, boat)).toEqual(without)
     await expect(asIngest((trx) => undoImport(trx, imported.upload, NOW))).rejects.toThrow(/already/)
 
-    const again = await asIngest((trx) => importSamples(trx, given()))
+    const again = await asIngest(async (trx) => importSamples(trx, await given()))
     const own = await send(boat, senml(boat.serial, gap.slice(0, 100)), { at: NOW })
     expect(own.body.samples).toMatchObject({ received: 100, stored: 100, duplicate: 0 })
     expect(await asIngest((trx) => undoImport(trx, again.upload, NOW))).toBe(200)

@@ -205,7 +205,7 @@ export async function dump(knex: Knex, boat: Boat): Promise<Record<string, strin
     ),
     head: (
       await texts(
-        'select head_at::text || head::text as t from system_state where system_id = ?',
+        `select coalesce(head_at::text || head::text, '') as t from system_state where system_id = ?`,
         boat.systemId,
       )
     ).map((text) => text.replace(/"loggerId": "\d+"/, '"loggerId": "x"')),
