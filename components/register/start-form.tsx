@@ -60,7 +60,7 @@ export function StartForm({ code, beforehand = {} }: { code?: string; beforehand
           key={code ?? ''}
           initial={code ?? ''}
           word="Go on with this logger"
-          take={(userCode) => start({ way: 'claim', userCode })}
+          take={(userCode) => start({ way: 'claim', userCode, systemId: beforehand.systemId })}
         />
       ) : (
         <SerialForm beforehand={beforehand} start={start} />

@@ -13,6 +13,8 @@ export function navigationOf(viewer: Viewer | null, demo: boolean): NavigationIt
     if (worksForShop(viewer)) items.push({ href: '/fleet', word: 'Fleet' })
     if (viewer.roles.includes('owner')) items.push({ href: '/tonight', word: 'Tonight' })
     items.push({ href: '/notices', word: 'Notices', counts: 'open-notices' })
+    if (viewer.roles.some((role) => role === 'installer' || role === 'manager'))
+      items.push({ href: '/loggers', word: 'Loggers' })
   }
   items.push({ href: '/calculators', word: 'Leak-down' })
   if (demo) items.push({ href: '/outbox', word: 'Outbox' })
@@ -23,5 +25,6 @@ export function navigationOf(viewer: Viewer | null, demo: boolean): NavigationIt
 export function isCurrent(href: string, path: string): boolean {
   if (href === '/') return path === '/'
   if (href === '/fleet' && path.startsWith('/vessels')) return true
+  if (href === '/loggers' && /^\/(register|claim)(\/|$)/.test(path)) return true
   return path === href || path.startsWith(`${href}/`)
 }

@@ -117,7 +117,7 @@ export async function judgeCheck(trx: Trx, row: CommissioningRow, asked: Asked):
       )
     case 'leak-down-after': {
       const before = lastDone(row.checks, 'leak-down-before')
-      const { rate: _rate, ...judged } = judgeLeakDownAfter({
+      const judged = judgeLeakDownAfter({
         readings: corrected,
         runs,
         beganMs,

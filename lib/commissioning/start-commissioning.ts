@@ -20,7 +20,7 @@ export async function startCommissioning(
   requireFitter(who)
   const claim = start.way === 'claim' ? await getClaim(who, start.userCode, now) : null
   const serial = start.way === 'claim' ? (claim?.serial ?? '') : start.serial
-  const systemId = start.way === 'claim' ? null : (start.systemId ?? null)
+  const systemId = start.systemId ?? null
   const id = await checkedWrite(
     who.personId,
     async (trx) => (systemId === null ? null : requireSystemRight(trx, systemId, 'registerLogger')),

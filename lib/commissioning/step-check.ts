@@ -79,14 +79,14 @@ async function conclude(
     )
   await asIngest(async (trx) => {
     await lockCommissioning(trx, row.id)
-    const { step: _step, ...given } = step
+    const { gaugePa, resolutionPa, leakDown } = step
     await concludeCheck(trx, open.id, {
       at: now,
       by: who.personId,
       outcome: verdict.outcome,
       figures: verdict.figures,
       reason: verdict.reason,
-      given: { ...given, ...verdict.keeps },
+      given: { gaugePa, resolutionPa, leakDown, ...verdict.keeps },
     })
   })
 }

@@ -85,7 +85,11 @@ export type Commissioning = z.infer<typeof commissioningSchema>
 
 /** POST /api/commissionings: a code that a logger shows, or a serial. */
 export const startCommissioningSchema = z.union([
-  z.object({ way: z.literal('claim'), userCode: z.string().trim().min(4).max(20) }),
+  z.object({
+    way: z.literal('claim'),
+    userCode: z.string().trim().min(4).max(20),
+    systemId: idSchema.optional(),
+  }),
   z.object({
     way: z.enum(['key', 'known']),
     serial: serialSchema,
