@@ -1,16 +1,32 @@
 import { notFound } from 'next/navigation'
+import { cache } from 'react'
 import { whoViews } from '@/lib/auth/page'
 import { Problem } from '@/lib/problem'
 import { getVessel } from '@/lib/vessels/get-vessel'
+import type { Vessel } from '@/shared/schemas'
+
+/** The vessel as this reader may see it, once a request; null when nobody is signed in or there is none to see. */
+const visibleVessel = cache(
+  async (vesselId: string): Promise<{ vessel: Vessel | null; signedIn: boolean }> => {
+    const who = await whoViews()
+    if (who === null) return { vessel: null, signedIn: false }
+    try {
+      return { vessel: await getVessel(who.personId, vesselId, new Date()), signedIn: true }
+    } catch (error) {
+      // An id that could never be one is as absent as a boat of somebody else.
+      if (error instanceof Problem && error.status >= 400 && error.status < 500)
+        return { vessel: null, signedIn: true }
+      throw error
+    }
+  },
+)
 
 /** What one may not see does not exist: its pages answer 404, as its data does. Nobody signed in is the page's matter. */
 export async function requireVisibleVessel(vesselId: string): Promise<void> {
-  const who = await whoViews()
-  if (who === null) return
-  try {
-    await getVessel(who.personId, vesselId, new Date())
-  } catch (error) {
-    if (error instanceof Problem && error.status === 404) notFound()
-    throw error
-  }
+  const { vessel, signedIn } = await visibleVessel(vesselId)
+  if (signedIn && vessel === null) notFound()
 }
+
+/** The boat's name for the window's title; the plain word where there is nothing to see. */
+export const vesselTitle = async (vesselId: string): Promise<string> =>
+  (await visibleVessel(vesselId)).vessel?.name ?? 'Vessel'

@@ -2,7 +2,7 @@ import type { Metadata } from 'next'
 import { signedInAt } from '@/app/viewer'
 import { NoticesTab } from '@/components/vessel/notices/notices-tab'
 
-export const metadata: Metadata = { title: 'Notices of a vessel' }
+export const metadata: Metadata = { title: 'Notices' }
 
 export default async function VesselNoticesPage({ params }: { params: Promise<{ id: string }> }) {
   const { id } = await params
