@@ -25,7 +25,7 @@ interface Asked {
 /** Asks at 20:00 of each of the given days about the night from 22:00 to 07:00 (the place's clock is UTC). */
 function askNights(spec: BoatSpec, days: readonly number[], said: 'unknown' | 'away'): Asked[] {
   const last = Math.max(...days)
-  const { samples, truth } = simulateBoat(spec, FROM, FROM + (last + 2) * DAY_MS)
+  const { samples, truth } = simulateBoat(spec, FROM, FROM + (last + 3) * DAY_MS)
   const { boat, take } = recordOf(spec, FROM)
   let taken = 0
   return days.map((day) => {
@@ -116,9 +116,9 @@ test('as it comes, pump only: 30 boats, two nights each', () => {
 
 test('next run with nobody flushing: 80 boats', () => {
   const asked = drawn(80, 530_000, {}).flatMap((spec) => {
-    const at = FROM + 3 * DAY_MS + 8 * HOUR_MS
+    const at = FROM + 6 * DAY_MS + 8 * HOUR_MS
     const away = [{ from: at - HOUR_MS, to: at + 3 * DAY_MS }]
-    return askNights({ ...spec, habits: { ...spec.habits, away } }, [3], 'away')
+    return askNights({ ...spec, habits: { ...spec.habits, away } }, [6], 'away')
   })
   const errors = asked.flatMap(({ outlook, nextRunAt }) => {
     const foretold = outlook.nextRun?.at ?? null

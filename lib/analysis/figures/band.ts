@@ -17,10 +17,10 @@ interface SwitchPoint {
 /** A usual switch starts the pump about 2 inHg under its cut-out (common practice, no source). */
 const USUAL_DIFFERENTIAL_PA = 2 * PA_PER_INHG
 /** How sure each source is (judged): the switch's scatter, an installer's rounding, the ends of holds seen sparsely. */
-const READING_SIGMA_PA = 0.02 * PA_PER_INHG
+const READING_SIGMA_PA = 0.016 * PA_PER_INHG
 /** Without a pump channel the turning points lie between two samples. */
 const TURNING_SIGMA_PA = 0.04 * PA_PER_INHG
-const SET_SIGMA_PA = 0.035 * PA_PER_INHG
+const SET_SIGMA_PA = 0.031 * PA_PER_INHG
 const SEEN_SIGMA_PA = 0.1 * PA_PER_INHG
 const USUAL_SIGMA_PA = 0.24 * PA_PER_INHG
 const FEWEST = 3
