@@ -1,8 +1,8 @@
 import { limitLockWait, lockStates, systemsToCatchUp } from '@/db/queries/system-state'
 import type { Trx } from '@/db/roles'
 import { DERIVER_VERSION } from '@/lib/analysis/fold'
-import { derive, isOfAnotherVersion, rebuild, type Derived } from '@/ingest/derive'
-import { settle } from '@/ingest/take-in'
+import { isOfAnotherVersion, type Derived } from '@/ingest/derive'
+import { settle, settleAnew } from '@/ingest/take-in'
 
 /**
  * Takes a changed fact (settings, fitting, statement, calibration) into a system's rows, in the transaction that
@@ -32,7 +32,7 @@ export const rederiveAt =
  */
 export async function rebuildSystem(trx: Trx, systemId: string, now: Date): Promise<Derived | null> {
   const [locked] = await lockStates(trx, [systemId])
-  return locked === undefined ? null : settle(trx, locked, null, now, (t, state) => rebuild(t, state))
+  return locked === undefined ? null : settleAnew(trx, locked, now)
 }
 
 /**
@@ -45,9 +45,7 @@ export async function catchUpOne(trx: Trx, now: Date): Promise<string | null> {
   await limitLockWait(trx)
   const [locked] = await lockStates(trx, [systemId])
   if (locked === undefined) return null
-  const anew = locked.rebuildWanted || isOfAnotherVersion(locked)
-  await settle(trx, locked, null, now, (t, state) =>
-    anew ? rebuild(t, state) : derive(t, state, null, true),
-  )
+  if (locked.rebuildWanted || isOfAnotherVersion(locked)) await settleAnew(trx, locked, now)
+  else await settle(trx, locked, null, now, true)
   return systemId
 }

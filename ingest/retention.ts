@@ -44,6 +44,12 @@ export async function retain(trx: Trx, now: Date, retentionDays: number): Promis
   let sealed = 0
   const open = await systemsToSeal(trx, new Date(untilMs), SYSTEMS_AT_ONCE)
   for (const systemId of open) if (await sealSystem(trx, systemId, untilMs)) sealed += 1
-  const all = sealed === open.length && open.length < SYSTEMS_AT_ONCE
-  return { sealed, dropped: all ? await dropSamplesBefore(trx, new Date(untilMs)) : 0 }
+  const more = open.length === SYSTEMS_AT_ONCE
+  const all = sealed === open.length && !more
+  // Those that could not be sealed wait for the next hour; asking for them again at once would not help.
+  return {
+    sealed,
+    dropped: all ? await dropSamplesBefore(trx, new Date(untilMs)) : 0,
+    left: more ? sealed : 0,
+  }
 }

@@ -3,8 +3,9 @@ import { refreshDays } from '@/db/queries/system-days'
 import { lockStates, type SystemState } from '@/db/queries/system-state'
 import type { Trx } from '@/db/roles'
 import { endsOf, type Batch } from '@/ingest/check'
-import { derive, type Change, type Derived } from '@/ingest/derive'
+import { derive, rebuild, type Change, type Derived } from '@/ingest/derive'
 import { judge } from '@/ingest/judge'
+import { storeFigures } from '@/lib/figures'
 
 interface Span {
   fromMs: number
@@ -44,18 +45,30 @@ export async function takeIn(
   return settle(trx, locked, changeWithin(spans, changed), now)
 }
 
-/** Derives, and brings up to date what is computed from the rows. */
+/** Derives, brings up to date what is computed from the rows, and judges what is to be told. */
 export async function settle(
   trx: Trx,
   locked: SystemState,
   change: Change | null,
   now: Date,
-  how: (trx: Trx, locked: SystemState, change: Change | null) => Promise<Derived> = derive,
+  patient = false,
 ): Promise<Derived> {
-  const derived = await how(trx, locked, change)
-  if (derived.span !== null) await refreshDays(trx, locked.systemId, derived.span.fromMs, derived.span.toMs)
+  const derived = await derive(trx, locked, change, patient)
+  await refreshSpan(trx, locked.systemId, derived)
   await judge(trx, locked.systemId, now)
   return derived
+}
+
+/** Derives a system anew. Nothing is told: what was told before was told by the same samples. */
+export async function settleAnew(trx: Trx, locked: SystemState, now: Date): Promise<Derived> {
+  const derived = await rebuild(trx, locked)
+  await refreshSpan(trx, locked.systemId, derived)
+  await storeFigures(trx, locked.systemId, now.getTime())
+  return derived
+}
+
+async function refreshSpan(trx: Trx, systemId: string, { span }: Derived): Promise<void> {
+  if (span !== null) await refreshDays(trx, systemId, span.fromMs, span.toMs)
 }
 
 function changeWithin(spans: readonly Span[], changed: Float64Array): Change | null {

@@ -1,16 +1,13 @@
-import { connect } from '@/db/knex'
+import { database } from '@/db/knex'
 import { migrate } from '@/db/migrate'
+import { commandDatabase } from '@/lib/run/command-database'
 
-/** `npm run migrate`: brings the database of DATABASE_URL up to date. */
-const url = process.env.DATABASE_URL
-if (url === undefined || url === '') {
-  console.error('Set DATABASE_URL to the database to be brought up to date.')
-  process.exit(1)
-}
-const knex = connect(url, { max: 1 })
+/** `npm run migrate`: brings the database up to date. */
+const end = await commandDatabase()
 try {
-  const names = await migrate(knex)
+  const names = await migrate(database())
   console.log(names.length === 0 ? 'The schema is up to date.' : `Ran ${names.join(', ')}`)
 } finally {
-  await knex.destroy()
+  await database().destroy()
+  await end()
 }

@@ -3,6 +3,7 @@ import { database } from '@/db/knex'
 import { allSystemIds } from '@/db/queries/system-state'
 import { asIngest } from '@/db/roles'
 import { rebuildSystem } from '@/ingest/rederive'
+import { commandDatabase } from '@/lib/run/command-database'
 
 const USAGE = 'Say which: npm run rebuild -- --system ID   or   npm run rebuild -- --all'
 
@@ -14,23 +15,26 @@ async function main(): Promise<void> {
     process.exitCode = 1
     return
   }
-  const ids = values.system === undefined ? await asIngest(allSystemIds) : [values.system]
-  for (const id of ids) {
-    const began = performance.now()
-    // One transaction a system: its readers see the old rows until the new ones are whole.
-    const derived = await asIngest((trx) => rebuildSystem(trx, id, new Date()))
-    if (derived === null) {
-      console.error(`There is no system ${id}.`)
-      process.exitCode = 1
-    } else
-      console.log(
-        `system ${id}: ${derived.items} items in ${((performance.now() - began) / 1000).toFixed(1)} s`,
-      )
+  const end = await commandDatabase()
+  try {
+    const ids = values.system === undefined ? await asIngest(allSystemIds) : [values.system]
+    for (const id of ids) await rebuildOne(id)
+  } finally {
+    await database().destroy()
+    await end()
   }
 }
 
-try {
-  await main()
-} finally {
-  if (process.env.DATABASE_URL) await database().destroy()
+async function rebuildOne(id: string): Promise<void> {
+  const began = performance.now()
+  // One transaction a system: its readers see the old rows until the new ones are whole.
+  const derived = await asIngest((trx) => rebuildSystem(trx, id, new Date()))
+  if (derived === null) {
+    console.error(`There is no system ${id}.`)
+    process.exitCode = 1
+    return
+  }
+  console.log(`system ${id}: ${derived.items} items in ${((performance.now() - began) / 1000).toFixed(1)} s`)
 }
+
+await main()
