@@ -1,8 +1,8 @@
 'use client'
 
-import { figureWords } from '@/components/register/figure-words'
 import { OutcomeMark } from '@/components/register/outcome-mark'
 import { useUnits } from '@/components/shell/units-context'
+import { figureWords } from '@/shared/commissioning-words'
 import type { CommissioningCheck } from '@/shared/schemas'
 
 /** How an attempt came out: mark and word, what was found and what to try, and every figure it rests on. */

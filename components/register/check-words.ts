@@ -1,3 +1,4 @@
+import { OUTCOME_TITLES } from '@/shared/commissioning-words'
 import type { CheckKind, CheckOutcome } from '@/shared/schemas'
 
 export interface CheckWords {
@@ -87,10 +88,7 @@ export const CHECK_WORDS: Record<CheckKind, CheckWords> = {
 }
 
 export const OUTCOME_WORDS: Record<CheckOutcome | 'under-way' | 'open', string> = {
-  passed: 'Passed',
-  failed: 'Did not pass',
-  'cannot-tell': 'Cannot tell yet',
-  'left-out': 'Left out',
+  ...OUTCOME_TITLES,
   'under-way': 'Under way',
   open: 'To do',
 }

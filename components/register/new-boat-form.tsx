@@ -36,24 +36,28 @@ const KINDS = [
 export function NewBoatForm({
   made,
   cancel,
+  cancelWord = 'Pick one instead',
 }: {
   made: (systemId: string) => Promise<void>
   cancel: () => void
+  cancelWord?: string
 }) {
   const { data: me, error } = useApi<Me>('/api/me')
   if (error) return <Trouble title={error.message} />
   if (!me) return <Loading what="your shop" />
-  return <Form me={me} made={made} cancel={cancel} />
+  return <Form me={me} made={made} cancel={cancel} cancelWord={cancelWord} />
 }
 
 function Form({
   me,
   made,
   cancel,
+  cancelWord,
 }: {
   me: Me
   made: (systemId: string) => Promise<void>
   cancel: () => void
+  cancelWord: string
 }) {
   const { units } = useUnits()
   const usual = (inHg: number) => String(Number(fromPa(inHgToPa(inHg), units.vacuum).toPrecision(3)))
@@ -165,7 +169,7 @@ function Form({
           {busy ? 'Setting up …' : 'Set up the boat'}
         </Button>
         <Button weight="quiet" onClick={cancel}>
-          Pick one instead
+          {cancelWord}
         </Button>
       </div>
     </form>

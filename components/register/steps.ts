@@ -1,3 +1,4 @@
+import { CHECK_TITLES } from '@/shared/commissioning-words'
 import type { CheckKind, CheckOutcome, Commissioning, CommissioningCheck } from '@/shared/schemas'
 
 /** Where one can be within a registration, as the address says it. */
@@ -6,13 +7,7 @@ export type Step = 'boat' | 'logger' | CheckKind | 'record'
 export const STEP_WORDS: Record<Step, string> = {
   boat: 'Boat and system',
   logger: 'Logger and key',
-  'first-reading': 'First reading',
-  'leak-down-before': 'Leak-down before fitting',
-  zero: 'Zero check',
-  'two-point': 'Two-point check',
-  'pump-channel': 'Pump channel',
-  'breaker-off': 'Breaker off',
-  'leak-down-after': 'Leak-down after fitting',
+  ...CHECK_TITLES,
   record: 'Record',
 }
 

@@ -22,7 +22,7 @@ export function openApiDocument(serverUrl: string): Document {
   })
   registry.registerComponent('securitySchemes', 'loggerKey', { type: 'http', scheme: 'bearer' })
   for (const operation of OPERATIONS) registry.registerPath(pathOf(operation))
-  for (const path of [...SIGN_IN, INGEST]) registry.registerPath(path)
+  for (const path of [...SIGN_IN, INGEST, RECORD_PDF]) registry.registerPath(path)
   const document = new OpenApiGeneratorV31(registry.definitions).generateDocument({
     openapi: '3.1.0',
     info: {
@@ -169,5 +169,22 @@ const INGEST: RouteConfig = {
     422: problem('Parseable, and nothing in it usable'),
     429: problem('Come again after Retry-After'),
     503: problem('Come again after Retry-After'),
+  },
+}
+
+const RECORD_PDF: RouteConfig = {
+  method: 'get',
+  path: '/api/loggers/{id}/commissioning/pdf',
+  summary: 'The commissioning record of a logger as a PDF',
+  tags: ['Commissioning'],
+  security: [{ session: [] }],
+  request: {
+    params: z.object({ id: z.string() }),
+    query: z.object({ units: z.enum(['inHg', 'kPa', 'mbar']).optional() }),
+  },
+  responses: {
+    200: { description: 'The record', content: { 'application/pdf': { schema: z.string() } } },
+    401: problem('Nobody is signed in'),
+    404: problem('No such logger or record, or not yours to see'),
   },
 }

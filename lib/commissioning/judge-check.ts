@@ -32,7 +32,6 @@ interface Asked {
   now: Date
 }
 
-const FIRST_LOOK_MS = 86_400_000
 /** Common practice, no source: where the pump starts when nobody said it. */
 const USUAL_CUT_OUT_PA = inHgToPa(10)
 
@@ -64,7 +63,8 @@ export async function judgeCheck(trx: Trx, row: CommissioningRow, asked: Asked):
   }
   if (logger === null) throw new Problem('conflict', 'Fit the logger first: the check reads what it sends.')
   const hasVacuum = logger.channels.includes('vacuum')
-  const since = kind === 'first-reading' ? new Date(now.getTime() - FIRST_LOOK_MS) : began
+  // What came before the step was opened counts as heard; what the logger sent from another boat does not.
+  const since = kind === 'first-reading' ? (row.fittedAt ?? began) : began
   const { raw, corrected } = await readingsSince(trx, logger.id, since, now)
   const runs = await runsSince(trx, system.id, began, now)
   const beganMs = began.getTime()

@@ -39,7 +39,7 @@ export async function authorizeDevice(clientId: string | undefined, now: Date) {
   for (;;) {
     const userCode = newUserCode()
     if (!(await asIngest((trx) => insertClaim(trx, { ...claim, userCode })))) continue
-    const verificationUri = `${env().appUrl}/loggers/claim`
+    const verificationUri = `${env().appUrl}/claim`
     return {
       device_code: deviceCode,
       user_code: shownCode(userCode),

@@ -21,7 +21,7 @@ const TRY: Record<Channel, string> = {
 
 /**
  * Has the logger been heard, with each channel that it is meant to measure, and is its clock near enough?
- * @param asked.samples how many were stored since the step began or, being the first ever, since fitting
+ * @param asked.samples how many were stored since it was fitted
  * @example judgeFirstReading({ channels: ['pump'], seen: ['pump'], samples: 1, clockOffsetSeconds: 3 }).outcome // 'passed'
  */
 export function judgeFirstReading(asked: {

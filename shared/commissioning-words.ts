@@ -1,12 +1,23 @@
-import type { CheckFigure } from '@/shared/schemas'
-import {
-  formatDuration,
-  formatRate,
-  formatRateRange,
-  formatVacuum,
-  UNKNOWN,
-  type VacuumUnit,
-} from '@/shared/units'
+import type { CheckFigure, CheckKind, CheckOutcome } from './schemas/commissioning'
+import { formatDuration, formatRate, formatRateRange, formatVacuum, UNKNOWN, type VacuumUnit } from './units'
+
+/** The checks of a commissioning by name, alike on screen and on paper. */
+export const CHECK_TITLES: Record<CheckKind, string> = {
+  'first-reading': 'First reading',
+  'leak-down-before': 'Leak-down before fitting',
+  zero: 'Zero check',
+  'two-point': 'Two-point check',
+  'pump-channel': 'Pump channel',
+  'breaker-off': 'Breaker off',
+  'leak-down-after': 'Leak-down after fitting',
+}
+
+export const OUTCOME_TITLES: Record<CheckOutcome, string> = {
+  passed: 'Passed',
+  failed: 'Did not pass',
+  'cannot-tell': 'Cannot tell yet',
+  'left-out': 'Left out',
+}
 
 const VACUUM_DECIMALS: Record<VacuumUnit, number> = { inHg: 2, kPa: 2, mbar: 1 }
 
