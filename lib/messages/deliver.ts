@@ -7,7 +7,7 @@ import {
   setAccepted,
   setFailed,
   type OutgoingMessage,
-} from '@/db/queries/message-queue'
+} from '@/db/queries/message-sending'
 import { isStopped, stopAddress } from '@/db/queries/recipients'
 import { SendError, type Services } from '@/lib/messages/services'
 import { env } from '@/lib/env'

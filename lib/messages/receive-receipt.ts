@@ -1,4 +1,10 @@
-import { messageExists, noteAttempt, setAccepted, setDelivered, setFailed } from '@/db/queries/message-queue'
+import {
+  messageExists,
+  noteAttempt,
+  setAccepted,
+  setDelivered,
+  setFailed,
+} from '@/db/queries/message-sending'
 import type { Trx } from '@/db/roles'
 
 /** What the service says became of a text. */

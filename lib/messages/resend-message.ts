@@ -1,4 +1,4 @@
-import { reviveMessage } from '@/db/queries/message-queue'
+import { reviveMessage } from '@/db/queries/message-sending'
 import type { Trx } from '@/db/roles'
 import { enqueue } from '@/lib/messages/queue'
 

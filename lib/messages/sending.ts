@@ -1,6 +1,6 @@
 import PgBoss from 'pg-boss'
 import { asIngest } from '@/db/roles'
-import { messageExists, noteAttempt, receiptOf, setFailed, lockMessage } from '@/db/queries/message-queue'
+import { messageExists, noteAttempt, receiptOf, setFailed, lockMessage } from '@/db/queries/message-sending'
 import { log } from '@/lib/log'
 import { deliver } from '@/lib/messages/deliver'
 import { DEAD_QUEUE, QUEUE, QUEUE_SCHEMA, type MessageJob } from '@/lib/messages/queue-settings'

@@ -2,6 +2,7 @@ import cron from 'node-cron'
 import { database } from '@/db/knex'
 import { asIngest } from '@/db/roles'
 import { catchUpOne } from '@/ingest/rederive'
+import { retain } from '@/ingest/retention'
 import { env } from '@/lib/env'
 import { log } from '@/lib/log'
 import { installQueue } from '@/lib/messages/install-queue'
@@ -15,6 +16,13 @@ const STOP_TIMEOUT_MS = 8_000
 
 /** Systems derived anew in one go; the rest wait for the next minute. */
 const CATCH_UP_AT_ONCE = 50
+
+/** Months that have served their time are sealed, then dropped, by the owner of the tables. */
+const retentionTick: Tick = {
+  name: 'retention',
+  role: 'owner',
+  work: (trx, now) => retain(trx, now, env().retentionDays),
+}
 
 /** Systems whose dated facts or whose deriver changed are brought up to date, each in its own transaction. */
 async function catchUp(): Promise<void> {
@@ -46,7 +54,7 @@ async function main(): Promise<void> {
   }
   const tasks = [
     cron.schedule('* * * * *', () => run(MINUTE_TICKS), { name: 'minute', noOverlap: true }),
-    cron.schedule('7 * * * *', () => run(HOUR_TICKS), { name: 'hour', noOverlap: true }),
+    cron.schedule('7 * * * *', () => run([...HOUR_TICKS, retentionTick]), { name: 'hour', noOverlap: true }),
   ]
 
   let stopping = false
@@ -67,7 +75,7 @@ async function main(): Promise<void> {
   process.once('SIGINT', () => void stop())
 
   console.log('worker ready')
-  await run([...HOUR_TICKS, ...MINUTE_TICKS])
+  await run([...MINUTE_TICKS, ...HOUR_TICKS, retentionTick])
 }
 
 // The queue reports what it finished without waiting for the answer; a database that restarts at that moment

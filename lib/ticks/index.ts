@@ -5,6 +5,7 @@ import { escalationTick } from '@/lib/ticks/escalation'
 import { figuresTick } from '@/lib/ticks/figures'
 import { housekeepingTick, partitionTick } from '@/lib/ticks/housekeeping'
 import { morningTick } from '@/lib/ticks/morning'
+import { movingTick } from '@/lib/ticks/moving'
 import { nightTick } from '@/lib/ticks/night'
 import { runTick, type Tick } from '@/lib/ticks/run-tick'
 import { silenceTick } from '@/lib/ticks/silence'
@@ -19,6 +20,7 @@ export const MINUTE_TICKS: Tick[] = [
   morningTick,
   figuresTick,
   tonightTick,
+  movingTick,
 ]
 /** What is asked every hour. */
 export const HOUR_TICKS: Tick[] = [partitionTick, stepsTick, housekeepingTick]

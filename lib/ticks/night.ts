@@ -93,10 +93,14 @@ async function dueTonight(trx: Trx, now: Date): Promise<Due[]> {
 const isEvening = (window: NightWindow, now: Date, leadMs: number): boolean =>
   now.getTime() >= window.from.getTime() - leadMs && now.getTime() < window.from.getTime() + LATEST_MS
 
-/** Nothing said yet, or only for want of something that may still be heard; then not oftener than every 5 min. */
+/**
+ * Nothing said yet, or only for want of something that may still be heard: readings that arrive at this moment are
+ * waited for from minute to minute, people from five to five.
+ */
 function isOpen(given: GivenOutlook | undefined, now: Date): boolean {
   if (given === undefined || given.reason === 'provisional') return true
-  return OPEN_REASONS.includes(given.reason) && now.getTime() - given.givenAt.getTime() >= 5 * 60_000
+  const pauseMs = given.reason === 'nobody-aboard' ? 5 * 60_000 : 45_000
+  return OPEN_REASONS.includes(given.reason) && now.getTime() - given.givenAt.getTime() >= pauseMs
 }
 
 /** @returns the event to be told, or null. */
