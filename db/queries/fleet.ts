@@ -60,7 +60,7 @@ export async function readFleet(trx: Trx, at: Date, vesselId: string | null): Pr
      select v.id as "vesselId", s.id as "systemId", v.name, s.name as "systemName", v.harbour, v.berth,
        v.time_zone as "timeZone", o.seconds as "utcOffsetSeconds",
        st.figures->>'state' as state, (st.figures->>'since')::float8 as "sinceMs", st.figures->'holdTime' as "holdTime",
-       st.figures->'moving' as moving, st.last_heard_at as "lastHeardAt",
+       st.moving, st.last_heard_at as "lastHeardAt",
        coalesce(g.limit_seconds, 10800) as "limitSeconds", coalesce(g.aim_seconds, 28800) as "aimSeconds",
        coalesce(g.silence_seconds, 21600) as "silenceSeconds", t.statement,
        n.chance, n.chance_if_flushed_last as "chanceIfFlushedLast", n.expected_runs as "expectedRuns",

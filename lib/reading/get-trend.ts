@@ -3,10 +3,11 @@ import { readSettings } from '@/db/queries/systems'
 import { asIngest, asPerson } from '@/db/roles'
 import { requireSystemRight } from '@/lib/access/require-right'
 import { findSteps } from '@/lib/analysis/steps'
-import { rateTrend, type DailyRate } from '@/lib/analysis/trend'
+import { rateTrend } from '@/lib/analysis/trend'
 import { summaryAt } from '@/lib/figures'
 import type { Trend } from '@/shared/schemas'
 import { inHgToPa, SECONDS_PER_HOUR } from '@/shared/units'
+import { withShortHolds } from './daily-rates'
 
 const DAY_MS = 86_400_000
 const USUAL_DAYS = 60
@@ -37,7 +38,7 @@ export async function getTrend(
       summary?.settledPa != null && summary.cutInPa != null ? summary.settledPa - summary.cutInPa : null
     const limitHours = (setting?.limitSeconds ?? 10_800) / SECONDS_PER_HOUR
     return {
-      daily: withDays(await readDayRates(trx, systemId, span), short),
+      daily: withShortHolds(await readDayRates(trx, systemId, span), short),
       legs: [...legs, ...short],
       limitPaPerHour: (band ?? USUAL_DIFFERENTIAL_PA) / limitHours,
     }
@@ -59,21 +60,4 @@ export async function getTrend(
       between: [instant(step.between[0]), instant(step.between[1])],
     })),
   }
-}
-
-/** Days of which legs say nothing, told by their short holds: the middle of those of the day. */
-function withDays(byLegs: readonly DailyRate[], short: readonly { startedAt: number; paPerHour: number }[]) {
-  const known = new Set(byLegs.map((day) => Math.floor(day.at / DAY_MS)))
-  const rest = new Map<number, number[]>()
-  for (const hold of short) {
-    const day = Math.floor(hold.startedAt / DAY_MS)
-    if (!known.has(day)) rest.set(day, [...(rest.get(day) ?? []), hold.paPerHour])
-  }
-  const told = [...rest].map(([day, rates]) => ({ at: (day + 0.5) * DAY_MS, paPerHour: middleOf(rates) }))
-  return [...byLegs, ...told].sort((a, b) => a.at - b.at)
-}
-
-function middleOf(values: readonly number[]): number {
-  const sorted = [...values].sort((a, b) => a - b)
-  return sorted[Math.floor((sorted.length - 1) / 2)] ?? 0
 }
