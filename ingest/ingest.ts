@@ -4,32 +4,23 @@ import {
   noteHeard,
   otherSerials,
   type IngestLogger,
+  type LoggerFitting,
 } from '@/db/queries/ingest-loggers'
 import { limitLockWait, noteSystemHeard } from '@/db/queries/system-state'
 import { answerByKey, insertUpload, lastShiftSeconds, nextUploadId } from '@/db/queries/uploads'
 import { asIngest, type Trx } from '@/db/roles'
-import { check, endsOf, possibleSerials, type Checked } from '@/ingest/check'
+import { check, endsOf, possibleSerials, type Batch, type Checked } from '@/ingest/check'
 import { clockOffsetSeconds, shiftSeconds } from '@/ingest/clock'
 import { parseCsv } from '@/ingest/parse-csv'
 import { parseSenml } from '@/ingest/parse-senml'
 import { formatOf, inTurn, readBody, textOf, type Format } from '@/ingest/read-body'
-import type { Reason, RecordColumns } from '@/ingest/records'
+import type { RecordColumns } from '@/ingest/records'
 import { store } from '@/ingest/store'
 import { inLine } from '@/ingest/in-line'
 import { lockReached, takeIn } from '@/ingest/take-in'
 import { refuseRetired, whoSends } from '@/ingest/who-sends'
 import { Problem } from '@/lib/problem'
-
-/** The answer to an upload, as the contract has it. */
-export interface UploadAnswer {
-  upload: string
-  samples: { received: number; stored: number; duplicate: number; conflicting: number; rejected: number }
-  rejected: { index: number; reason: Reason }[]
-  rejectedRecords: number
-  clock: { offsetSeconds: number | null }
-  serverTime: string
-  next: { intervalSeconds: number; until: string | null }
-}
+import { ingestAnswerSchema, type IngestAnswer } from '@/shared/schemas/loggers'
 
 const MAX_KEY_LENGTH = 200
 
@@ -39,7 +30,7 @@ const MAX_KEY_LENGTH = 200
  * @param receivedAt the moment of receipt: relative times and the clock's offset count from it.
  * @throws Problem for every refusal; then nothing was changed.
  */
-export async function ingest(request: Request, receivedAt: Date): Promise<UploadAnswer> {
+export async function ingest(request: Request, receivedAt: Date): Promise<IngestAnswer> {
   const sender = await whoSends(request)
   const format = formatOf(request.headers.get('content-type'))
   const key = idempotencyKey(request.headers)
@@ -70,7 +61,7 @@ interface Upload {
   receivedAt: Date
 }
 
-async function takeUpload(trx: Trx, upload: Upload): Promise<UploadAnswer> {
+async function takeUpload(trx: Trx, upload: Upload): Promise<IngestAnswer> {
   const { format, key, records, offsetSeconds, receivedAt } = upload
   await limitLockWait(trx)
   const logger = await lockLogger(trx, upload.sender.id)
@@ -78,7 +69,7 @@ async function takeUpload(trx: Trx, upload: Upload): Promise<UploadAnswer> {
   refuseRetired(logger)
   if (key !== null) {
     const before = await answerByKey(trx, logger.id, key, receivedAt)
-    if (before !== null) return before.answer as UploadAnswer // written by this function, under this key
+    if (before !== null) return ingestAnswerSchema.parse(before.answer)
   }
 
   const fittings = await fittingsOfLogger(trx, logger.id)
@@ -103,7 +94,7 @@ async function takeUpload(trx: Trx, upload: Upload): Promise<UploadAnswer> {
   const id = await nextUploadId(trx)
   const stored = await store(trx, logger.id, id, batch)
   await noteHeard(trx, logger.id, receivedAt, offsetSeconds)
-  const answer: UploadAnswer = {
+  const answer: IngestAnswer = {
     upload: id,
     samples: {
       received: batch.count + checked.rejectedSamples,
@@ -132,10 +123,23 @@ async function takeUpload(trx: Trx, upload: Upload): Promise<UploadAnswer> {
     importedBy: null,
   })
   for (const { state, spans } of reached) {
-    await noteSystemHeard(trx, state.systemId, receivedAt)
+    await noteSystemHeard(trx, state.systemId, heardOf(batch, spans, receivedAt))
     await takeIn(trx, state, spans, stored.changed, receivedAt)
   }
   return answer
+}
+
+/**
+ * A system is heard of up to its newest reading, not up to the moment when it arrived: a backlog that ends two days
+ * ago says nothing of these two days.
+ */
+function heardOf(batch: Batch, spans: readonly LoggerFitting[], receivedAt: Date): Date {
+  let newestMs = -Infinity
+  for (let index = 0; index < batch.count; index += 1) {
+    const at = batch.at[index] ?? -Infinity
+    if (at > newestMs && spans.some(({ fromMs, toMs }) => at >= fromMs && at < toMs)) newestMs = at
+  }
+  return new Date(Math.min(newestMs, receivedAt.getTime()))
 }
 
 async function otherLoggers(trx: Trx, loggerId: string, records: RecordColumns): Promise<Set<number>> {
@@ -156,7 +160,7 @@ function nothingUsable({ rejected, rejectedRecords }: Checked): Problem {
 }
 
 /** The rhythm asked for: a finer one while somebody watches. */
-function rhythm(logger: IngestLogger, now: Date): UploadAnswer['next'] {
+function rhythm(logger: IngestLogger, now: Date): IngestAnswer['next'] {
   const { fineIntervalSeconds, fineUntil, intervalSeconds } = logger
   return fineIntervalSeconds !== null && fineUntil !== null && fineUntil > now
     ? { intervalSeconds: fineIntervalSeconds, until: fineUntil.toISOString() }

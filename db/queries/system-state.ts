@@ -118,10 +118,10 @@ export async function allSystemIds(trx: Trx): Promise<string[]> {
   return rows.map((row) => row.id)
 }
 
-/** Something of this system was received at `receivedAt`. */
-export async function noteSystemHeard(trx: Trx, systemId: string, receivedAt: Date): Promise<void> {
+/** This system is heard of up to `heardAt`. */
+export async function noteSystemHeard(trx: Trx, systemId: string, heardAt: Date): Promise<void> {
   await trx.raw('update system_state set last_heard_at = greatest(last_heard_at, ?) where system_id = ?', [
-    receivedAt,
+    heardAt,
     systemId,
   ])
 }
