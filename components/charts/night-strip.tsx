@@ -7,10 +7,14 @@ export type StripNight = {
   runs: readonly number[]
   flushes: readonly number[]
   expected?: readonly number[]
+  /** From this minute on nothing was heard: neither quiet nor not. */
+  unheardFrom?: number
 }
 
 /** What the strip shows, in words: "quiet", or "3 runs by itself, first at 23:40; 2 flushes". */
 export function stripWords(night: StripNight): string {
+  const silent = night.unheardFrom
+  if (silent !== undefined && silent <= night.quiet[0]) return 'not heard'
   const runs = night.runs.filter((minute) => inQuiet(minute, night.quiet))
   const first = runs[0]
   const parts: string[] = []
@@ -19,6 +23,7 @@ export function stripWords(night: StripNight): string {
     parts.push(
       `${runs.length} ${runs.length === 1 ? 'run' : 'runs'} by itself, first at ${clockOfMinute(first)}`,
     )
+  if (silent !== undefined) parts.push(`not heard after ${clockOfMinute(silent)}`)
   const flushes = night.flushes.length
   if (flushes > 0) parts.push(`${flushes} ${flushes === 1 ? 'flush' : 'flushes'}`)
   const expected = night.expected?.[0]
@@ -38,6 +43,24 @@ function Ticks({ d, stroke, width, dash }: { d: string; stroke: string; width: n
       stroke={stroke}
       strokeWidth={width}
       strokeDasharray={dash}
+      vectorEffect="non-scaling-stroke"
+    />
+  )
+}
+
+/** Where nothing was heard there is no band to read: an empty, dashed outline, as the mark of an unheard boat. */
+function Silence({ from, height }: { from: number | undefined; height: number }) {
+  if (from === undefined) return null
+  const start = onStrip(from)
+  return (
+    <rect
+      x={start}
+      y="0.7"
+      width={STRIP_MINUTES - start}
+      height={height - 1.4}
+      fill="var(--water)"
+      stroke="var(--ink-2)"
+      strokeDasharray="2.5 2.5"
       vectorEffect="non-scaling-stroke"
     />
   )
@@ -67,6 +90,7 @@ export function StripBody({
     <>
       <rect width={STRIP_MINUTES} height={height} fill="var(--twilight)" />
       <rect x={from} width={Math.max(0, to - from)} height={height} fill="var(--quiet)" />
+      <Silence from={night.unheardFrom} height={height} />
       <Ticks d={flush(night.flushes.filter(outside))} stroke="var(--tick-flush)" width={1.2} />
       <Ticks d={flush(night.flushes.filter(within))} stroke="var(--tick-flush-quiet)" width={1.2} />
       <Ticks d={run(night.runs.filter(outside))} stroke={`var(--tick-${ink})`} width={width} />

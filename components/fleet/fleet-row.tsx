@@ -7,7 +7,7 @@ import { NightRow, stripWords } from '@/components/charts/night-strip'
 import { movingWords, rowName, tonightWords } from '@/components/fleet/fleet-words'
 import { holdWords } from '@/components/figures'
 import type { FleetBoat } from '@/components/fleet/order'
-import { drawnOn, finishedNights } from '@/components/nights'
+import { drawnOn, finishedNights, withSilence } from '@/components/nights'
 import { NOTICE_WORDS } from '@/components/notices/words'
 import { isTroubled } from '@/components/states'
 import { dayAndClock, dayOfDate, span } from '@/components/time'
@@ -35,7 +35,9 @@ export const FleetRowCells = memo(function FleetRowCells({ row, index, nights, n
   const berth = [row.berth, row.harbour].filter(Boolean).join(', ')
   const calm = !isTroubled(row.state)
   const tonight = tonightWords(row)
-  const over = finishedNights(nights ?? [], row.utcOffsetSeconds, nowMs).map(drawnOn)
+  const over = finishedNights(nights ?? [], row.utcOffsetSeconds, nowMs).map((night) =>
+    withSilence(drawnOn(night), row.lastHeardAt, row.utcOffsetSeconds),
+  )
   return (
     <div
       role="row"

@@ -1,7 +1,7 @@
 import { NightAxis, axisMinutes } from '@/components/charts/night-axis'
 import { NightStrip } from '@/components/charts/night-strip'
 import { inQuiet } from '@/components/charts/scales'
-import { drawnOn } from '@/components/nights'
+import { drawnOn, withSilence } from '@/components/nights'
 import { dayOfDate, weekdayOfDate } from '@/components/time'
 import type { Night } from '@/shared/schemas'
 
@@ -10,16 +10,34 @@ export const wokenBy = (night: Night): number =>
   drawnOn(night).runs.filter((minute) => inQuiet(minute, night.quiet)).length
 
 /** What a night came to: "quiet", "1 run", "6 runs", "c. 75 runs" where not every one was listed. */
-export function nightWord(night: Night): string {
+export function nightWord(night: Night & { unheardFrom?: number }): string {
+  if (night.unheardFrom !== undefined) return 'unheard'
   const count = wokenBy(night)
   if (count === 0) return 'quiet'
   const about = night.more > 0 ? 'c. ' : ''
   return `${about}${count} ${count === 1 ? 'run' : 'runs'}`
 }
 
+/** Green for a quiet night, the hot colour for runs that matter, plain for what is not known. */
+function wordTone(night: Night & { unheardFrom?: number }, calm: boolean): string {
+  if (night.unheardFrom !== undefined) return 'text-ink-2'
+  if (wokenBy(night) === 0) return 'text-sound'
+  return calm ? '' : 'text-attention'
+}
+
 /** The last nights, newest first, each as a strip with its outcome in a word. */
-export function LastNights({ nights, calm }: { nights: readonly Night[]; calm: boolean }) {
-  const newest = [...nights].reverse()
+export function LastNights({
+  nights,
+  calm,
+  lastHeardAt,
+  offsetSeconds,
+}: {
+  nights: readonly Night[]
+  calm: boolean
+  lastHeardAt: string | null
+  offsetSeconds: number
+}) {
+  const newest = nights.map((night) => withSilence(night, lastHeardAt, offsetSeconds)).reverse()
   const quiet = newest[0]?.quiet ?? [240, 780]
   return (
     <div className="grid grid-cols-[2.4em_1fr_4.6em] items-center gap-x-3 gap-y-1.5">
@@ -27,9 +45,7 @@ export function LastNights({ nights, calm }: { nights: readonly Night[]; calm: b
         <div key={night.date} className="contents">
           <span>{weekdayOfDate(night.date)}</span>
           <NightStrip night={drawnOn(night)} height={20} calm={calm} label={dayOfDate(night.date)} />
-          <span className={`figure ${wokenBy(night) === 0 ? 'text-sound' : calm ? '' : 'text-attention'}`}>
-            {nightWord(night)}
-          </span>
+          <span className={`figure ${wordTone(night, calm)}`}>{nightWord(night)}</span>
         </div>
       ))}
       <span />

@@ -77,7 +77,12 @@ export function SystemTonight({ vessel, system }: { vessel: Vessel; system: Syst
       <div>
         <h2 className="mt-6 mb-2 lg:mt-2">Last seven nights</h2>
         {past.length > 0 ? (
-          <LastNights nights={past} calm={calm} />
+          <LastNights
+            nights={past}
+            calm={calm}
+            lastHeardAt={summary.data.lastHeardAt}
+            offsetSeconds={vessel.utcOffsetSeconds}
+          />
         ) : (
           <p className="text-ink-2">
             No night has been heard yet. Tomorrow morning the first one stands here.

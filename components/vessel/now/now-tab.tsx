@@ -55,7 +55,12 @@ export function NowTab({ id }: { id: string }) {
       <div>
         <h2 className="mb-2">Last seven nights</h2>
         {listed.length > 0 ? (
-          <LastNights nights={listed} calm={!isTroubled(system.state)} />
+          <LastNights
+            nights={listed}
+            calm={!isTroubled(system.state)}
+            lastHeardAt={system.logger?.lastHeardAt ?? null}
+            offsetSeconds={vessel.utcOffsetSeconds}
+          />
         ) : (
           <p className="text-ink-2">No night has been heard yet.</p>
         )}

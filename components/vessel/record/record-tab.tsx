@@ -38,7 +38,12 @@ export function RecordTab({ id }: { id: string }) {
         {listed.length > 0 ? (
           <div>
             <h2 className="datum mb-1 font-medium">Last nights</h2>
-            <LastNights nights={listed.slice(-3)} calm={!isTroubled(system.state)} />
+            <LastNights
+              nights={listed.slice(-3)}
+              calm={!isTroubled(system.state)}
+              lastHeardAt={system.logger?.lastHeardAt ?? null}
+              offsetSeconds={vessel.utcOffsetSeconds}
+            />
           </div>
         ) : null}
       </div>
@@ -56,7 +61,12 @@ export function RecordTab({ id }: { id: string }) {
           <h2 id="nights-title" className="mb-2">
             Nights
           </h2>
-          <LastNights nights={listed} calm={!isTroubled(system.state)} />
+          <LastNights
+            nights={listed}
+            calm={!isTroubled(system.state)}
+            lastHeardAt={system.logger?.lastHeardAt ?? null}
+            offsetSeconds={vessel.utcOffsetSeconds}
+          />
         </section>
       ) : null}
     </>

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { expectedMinutes, minuteOf, runsToSay, tonightOf } from '@/components/tonight/night-plan'
-import { drawnOn, finishedNights } from '@/components/nights'
+import { stripWords } from '@/components/charts/night-strip'
+import { drawnOn, finishedNights, withSilence } from '@/components/nights'
 import { nightWord } from '@/components/tonight/last-nights'
 import { clockChanges } from '@/components/tonight/use-night-offsets'
 import { hold, outlook, summary } from './fixtures'
@@ -100,5 +101,21 @@ describe('a night whose list was cut short', () => {
     expect(drawnOn({ ...night, more: 0 }).runs).toEqual([200, 210, 220])
     expect(nightWord({ ...night, more: 0, runs: [200, 300] })).toBe('1 run')
     expect(nightWord({ ...night, more: 0, runs: [] })).toBe('quiet')
+  })
+})
+
+describe('a night in which the logger fell silent', () => {
+  const night = { date: '2026-11-30', quiet: [240, 780] as [number, number], runs: [], flushes: [], more: 0 }
+  const since = (lastHeardAt: string | null) => withSilence(night, lastHeardAt, -14_400)
+  it('is not called quiet', () => {
+    expect(since('2026-12-01T04:00:00Z').unheardFrom).toBe(360)
+    expect(nightWord(since('2026-12-01T04:00:00Z'))).toBe('unheard')
+    expect(since('2026-11-20T04:00:00Z').unheardFrom).toBe(0)
+    expect(since(null).unheardFrom).toBe(0)
+    expect(stripWords(since('2026-12-01T04:00:00Z'))).toBe('quiet; not heard after 00:00')
+    expect(stripWords(since(null))).toBe('not heard')
+  })
+  it('is whole when the last word came after its quiet hours', () => {
+    expect(since('2026-12-01T11:30:00Z').unheardFrom).toBeUndefined()
   })
 })
