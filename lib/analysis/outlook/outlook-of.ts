@@ -62,7 +62,7 @@ export function outlookOf(input: OutlookInput): Outlook {
       : asItComes.chance < WORTH_SAYING
         ? null
         : spanOf(asItComes.firstRuns.filter((run) => run < night.to)),
-    nextRun: input.open.run === null ? expected(ahead.nextRuns, 0.025) : null,
+    nextRun: expected(ahead.nextRuns, 0.025),
     basis: known ? 'phase-known' : 'phase-open',
   }
 }

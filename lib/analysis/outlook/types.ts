@@ -63,7 +63,7 @@ export interface Outlook {
    * that nobody flushes and may lie after the night; with the phase open a span (5 to 95 %), null under 5 %.
    */
   firstRun: RunExpected | null
-  /** The very next run from now if nobody flushes, whatever the hour; null while learning or with the pump on. */
+  /** The very next run from now if nobody flushes, whatever the hour; null while learning, or with none in two days. With the pump on, the one after this. */
   nextRun: RunExpected | null
   basis: 'phase-known' | 'phase-open' | 'learning'
   aboard: AboardWord
