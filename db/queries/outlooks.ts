@@ -118,7 +118,7 @@ export async function lastNightWarning(
   return row === undefined ? null : { at: row.opened_at, expectedRuns: Number(row.expected ?? 0) }
 }
 
-/** Outlooks whose night is over and that nobody has scored yet, oldest first. */
+/** An outlook whose night is over and that can be scored. */
 export interface UnscoredOutlook {
   id: string
   systemId: string
@@ -128,21 +128,25 @@ export interface UnscoredOutlook {
   chance: number | null
   chanceIfFlushedLast: number | null
   warned: boolean
-  lastHeardAt: Date | null
 }
 
+/**
+ * Outlooks that nobody has scored yet, oldest first: their night is over and its end was heard of, or it was over
+ * before `givenUpBefore` and nothing will be heard of it any more.
+ */
 export async function unscoredOutlooks(
   trx: Trx,
-  endedBefore: Date,
+  now: Date,
+  givenUpBefore: Date,
   limit: number,
 ): Promise<UnscoredOutlook[]> {
   const { rows } = (await trx.raw(
     `select o.id, o.system_id, s.vessel_id, o.quiet_from, o.quiet_to, o.chance, o.chance_if_flushed_last,
-       exists (select 1 from notice n where n.system_id = o.system_id and n.night = o.night) as warned,
-       t.last_heard_at
+       exists (select 1 from notice n where n.system_id = o.system_id and n.night = o.night) as warned
      from outlook o join system s on s.id = o.system_id left join system_state t on t.system_id = o.system_id
-     where o.scored_at is null and o.quiet_to < ? order by o.quiet_to, o.id limit ?`,
-    [endedBefore, limit],
+     where o.scored_at is null and o.quiet_to < ? and (t.last_heard_at > o.quiet_to or o.quiet_to < ?)
+     order by o.quiet_to, o.id limit ?`,
+    [now, givenUpBefore, limit],
   )) as {
     rows: {
       id: string
@@ -153,7 +157,6 @@ export async function unscoredOutlooks(
       chance: number | null
       chance_if_flushed_last: number | null
       warned: boolean
-      last_heard_at: Date | null
     }[]
   }
   return rows.map((row) => ({
@@ -165,7 +168,6 @@ export async function unscoredOutlooks(
     chance: row.chance,
     chanceIfFlushedLast: row.chance_if_flushed_last,
     warned: row.warned,
-    lastHeardAt: row.last_heard_at,
   }))
 }
 

@@ -24,8 +24,7 @@ export async function lookBack(trx: Trx, now: Date): Promise<Record<string, numb
     // Written down, and told to nobody: that the night is over is no news.
     await addEvent(trx, notice.id, 'ended', { at: now, reason: 'The night is over' })
   }
-  const unscored = await unscoredOutlooks(trx, now, BATCH)
-  const ready = unscored.filter((outlook) => isReady(outlook, now))
+  const ready = await unscoredOutlooks(trx, now, new Date(now.getTime() - WAIT_MS), BATCH)
   for (const outlook of ready) {
     try {
       await trx.transaction((inner) => score(inner, outlook, now))
@@ -34,11 +33,6 @@ export async function lookBack(trx: Trx, now: Date): Promise<Record<string, numb
     }
   }
   return { ended: over.length, scored: ready.length }
-}
-
-function isReady(outlook: UnscoredOutlook, now: Date): boolean {
-  const heardOut = outlook.lastHeardAt !== null && outlook.lastHeardAt > outlook.quietTo
-  return heardOut || now.getTime() - outlook.quietTo.getTime() > WAIT_MS
 }
 
 async function score(trx: Trx, outlook: UnscoredOutlook, now: Date): Promise<void> {

@@ -173,6 +173,22 @@ describe('the evening of a leaking boat', () => {
       expect((await outlookOf(boat)).detail.reason).toBe('not-expected')
     }
     expect(await database.knex('notice').where({ kind: 'night-warning' })).toEqual([])
+
+    await database.knex('statement').delete()
+    await database.knex('outlook').delete()
+    // Muted by a reply to last week's warning.
+    await database.knex('notice').insert({
+      system_id: boat.systemId,
+      vessel_id: boat.vesselId,
+      kind: 'night-warning',
+      night: '2026-03-05',
+      opened_at: new Date(EVENING - 5 * DAY),
+      closed_at: new Date(EVENING - 4 * DAY),
+      reason: 'A run is likely',
+      snoozed_until: new Date(EVENING + DAY),
+    })
+    await tick(EVENING)
+    expect((await outlookOf(boat)).detail.reason).toBe('not-expected')
   })
 
   it('of two boats of one owner is one mail and one text', async () => {
