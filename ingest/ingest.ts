@@ -123,7 +123,8 @@ async function takeUpload(trx: Trx, upload: Upload): Promise<IngestAnswer> {
     importedBy: null,
   })
   for (const { state, spans } of reached) {
-    await noteSystemHeard(trx, state.systemId, heardOf(batch, spans, receivedAt))
+    const heardAt = heardOf(batch, spans, receivedAt)
+    if (heardAt !== null) await noteSystemHeard(trx, state.systemId, heardAt)
     await takeIn(trx, state, spans, stored.changed, receivedAt)
   }
   return answer
@@ -133,13 +134,14 @@ async function takeUpload(trx: Trx, upload: Upload): Promise<IngestAnswer> {
  * A system is heard of up to its newest reading, not up to the moment when it arrived: a backlog that ends two days
  * ago says nothing of these two days.
  */
-function heardOf(batch: Batch, spans: readonly LoggerFitting[], receivedAt: Date): Date {
+function heardOf(batch: Batch, spans: readonly LoggerFitting[], receivedAt: Date): Date | null {
   let newestMs = -Infinity
   for (let index = 0; index < batch.count; index += 1) {
     const at = batch.at[index] ?? -Infinity
     if (at > newestMs && spans.some(({ fromMs, toMs }) => at >= fromMs && at < toMs)) newestMs = at
   }
-  return new Date(Math.min(newestMs, receivedAt.getTime()))
+  // A batch may reach over a fitting without a reading within it.
+  return newestMs === -Infinity ? null : new Date(Math.min(newestMs, receivedAt.getTime()))
 }
 
 async function otherLoggers(trx: Trx, loggerId: string, records: RecordColumns): Promise<Set<number>> {

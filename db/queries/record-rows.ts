@@ -130,6 +130,7 @@ export interface FiguresSetUp {
   altitudeM: number
   channels: string[]
   intervalSeconds: number | null
+  /** Newest reading: a backlog that ended two days ago says nothing of these two days. */
   lastHeardMs: number | null
   /** The owner's word on who is aboard, in force at the instant. */
   said: 'aboard' | 'away' | null
@@ -144,7 +145,7 @@ export async function setUpAt(trx: Trx, systemId: string, atMs: number): Promise
        coalesce(s.limit_seconds, 10800) as "limitSeconds", coalesce(s.aim_seconds, 28800) as "aimSeconds",
        coalesce(s.silence_seconds, 21600) as "silenceSeconds", s.pump_amps as "pumpAmps", v.altitude_m as "altitudeM",
        coalesce(f.channels, '{}') as channels, f.interval_seconds as "intervalSeconds",
-       ${ms('greatest(h.sampled, h.received)')} as "lastHeardMs", a.value as said,
+       ${ms('h.sampled')} as "lastHeardMs", a.value as said,
        ${ms(`((date_trunc('day', (:at::timestamptz at time zone v.time_zone) - interval '17 hours')
          + interval '17 hours') at time zone v.time_zone)`)} as "eveningMs"
      from system y join vessel v on v.id = y.vessel_id
@@ -156,15 +157,12 @@ export async function setUpAt(trx: Trx, systemId: string, atMs: number): Promise
        select l.channels, l.interval_seconds from logger_fitting g join logger l on l.id = g.logger_id
        where g.system_id = y.id and g.span @> :at::timestamptz) f on true
      left join lateral (
-       select max(heard.sampled) as sampled, max(heard.received) as received
+       select max(heard.at) as sampled
        from logger_fitting g
        cross join lateral (
-         select (select p.at from sample p where p.logger_id = g.logger_id and p.at >= lower(g.span)
-             and p.at < coalesce(upper(g.span), 'infinity') and p.at <= :at::timestamptz
-             order by p.at desc limit 1) as sampled,
-           (select u.received_at from upload u where u.logger_id = g.logger_id and u.format <> 'import'
-             and u.received_at <@ g.span and u.received_at <= :at::timestamptz
-             order by u.received_at desc limit 1) as received) heard
+         select p.at from sample p where p.logger_id = g.logger_id and p.at >= lower(g.span)
+           and p.at < coalesce(upper(g.span), 'infinity') and p.at <= :at::timestamptz
+         order by p.at desc limit 1) heard
        where g.system_id = y.id) h on true
      left join lateral (
        select value from statement where vessel_id = y.vessel_id and system_id is null and from_at <= :at::timestamptz

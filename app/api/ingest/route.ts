@@ -4,6 +4,7 @@ import { methods } from '@/lib/api/methods'
 import { now } from '@/lib/env'
 import { log } from '@/lib/log'
 import { answering } from '@/lib/problem'
+import { ingestAnswerSchema } from '@/shared/schemas/loggers'
 
 export const runtime = 'nodejs'
 
@@ -12,7 +13,7 @@ export const { GET, POST, PUT, PATCH, DELETE } = methods({
   POST: async (request) =>
     withHeaders(
       await answering(
-        async () => Response.json(await ingest(request, now(request))),
+        async () => Response.json(ingestAnswerSchema.parse(await ingest(request, now(request)))),
         (error) => log.error({ err: error, path: '/api/ingest' }, 'upload failed'),
       ),
     ),
