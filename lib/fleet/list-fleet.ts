@@ -1,5 +1,5 @@
-import { readFleet, type FleetSource } from '@/db/queries/fleet'
-import { asPerson } from '@/db/roles'
+import { readFleet, readSeenVessels, type FleetSource } from '@/db/queries/fleet'
+import { asIngest, asPerson } from '@/db/roles'
 import { pageOf } from '@/lib/api/page-of'
 import { movingWordSchema, type FleetRow, type HoldTime, type List, type State } from '@/shared/schemas'
 import { z } from 'zod'
@@ -25,7 +25,9 @@ export async function listFleet(
   page: { limit: number; cursor?: string | undefined; vessel?: string | undefined },
   now: Date,
 ): Promise<List<FleetRow>> {
-  const sources = await asPerson(personId, (trx) => readFleet(trx, now, page.vessel ?? null))
+  const seen = await asPerson(personId, readSeenVessels)
+  const vesselIds = page.vessel === undefined ? seen : seen.filter((id) => id === page.vessel)
+  const sources = await asIngest((trx) => readFleet(trx, now, vesselIds))
   const rows = sources.map((source) => toRow(source, now)).sort(worstFirst)
   return pageOf(rows, page, (row) => row.systemId)
 }
