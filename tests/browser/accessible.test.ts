@@ -65,9 +65,14 @@ describe('WCAG 2.2 AA, and nothing to scroll sideways', () => {
     const { page, close } = await readerOf(ACCOUNTS.owner, { viewport: { width: 2560, height: 1300 } })
     await page.goto('/tonight')
     await page.getByText('Last seven nights').first().waitFor()
-    const widest = await page.evaluate(() =>
-      Math.max(...[...document.querySelectorAll('main p, main li')].map((line) => line.clientWidth)),
-    )
+    const widest = await page.evaluate(() => {
+      const widthOf = (line: Element) => {
+        const range = document.createRange()
+        range.selectNodeContents(line)
+        return range.getBoundingClientRect().width
+      }
+      return Math.max(...[...document.querySelectorAll('main p, main li')].map(widthOf))
+    })
     expect(widest).toBeLessThan(900)
     expect(await overflowOf(page)).toBe(0)
     await close()

@@ -53,7 +53,7 @@ describe('an owner’s evening', () => {
     const { page, close } = await readerOf(ACCOUNTS.owner)
     await page.goto('/tonight')
     const sheet = page.getByRole('region', { name: 'Browser Hare' })
-    await sheet.getByRole('textbox').fill('Runs at night since Sunday.')
+    await sheet.getByLabel('What you noticed', { exact: false }).fill('Runs at night since Sunday.')
     await sheet.getByRole('button', { name: /^Ask .* for a visit/ }).click()
     await sheet.getByText('You have asked for a visit').waitFor()
     await close()

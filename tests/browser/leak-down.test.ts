@@ -11,7 +11,7 @@ describe('leak-down', () => {
       if (request.method() !== 'GET') sent.push(request.url())
     })
     await page.getByLabel('Vacuum, second reading').fill('9.75')
-    await page.getByLabel('Minutes between').fill('60')
+    await page.getByLabel('Minutes between, of the test').fill('60')
     await page
       .getByText(/Tight|Weeping/)
       .first()
@@ -30,18 +30,16 @@ describe('leak-down', () => {
     const { page, context, close } = await readerOf(null)
     await page.goto('/calculators')
     await page.getByText('It would hold about').waitFor()
-    await page.waitForFunction(async () => {
-      const kept = await caches.match('/calculators')
-      return kept !== undefined && navigator.serviceWorker.controller !== null
-    })
-    // The page and its parts are kept one after the other; the last one says that all are there.
-    await page.waitForFunction(async () => {
-      const parts = performance
-        .getEntriesByType('resource')
-        .filter((entry) => entry.name.includes('/_next/static/'))
-      const kept = await Promise.all(parts.map((entry) => caches.match(entry.name)))
-      return kept.every((answer) => answer !== undefined)
-    })
+    const isKept = () =>
+      page.evaluate(async () => {
+        const parts = performance
+          .getEntriesByType('resource')
+          .map((entry) => entry.name)
+          .filter((name) => name.includes('/_next/static/'))
+        const kept = await Promise.all(['/calculators', ...parts].map((name) => caches.match(name)))
+        return navigator.serviceWorker.controller !== null && kept.every((answer) => answer !== undefined)
+      })
+    await expect.poll(isKept, { timeout: 20_000 }).toBe(true)
     await context.setOffline(true)
     await page.reload()
     await page.getByLabel('Vacuum, second reading').fill('9.1')
