@@ -59,7 +59,13 @@ export class Problem extends Error {
 /** The response that carries a problem, as `application/problem+json`. */
 export function problemResponse(problem: Problem): Response {
   const { status, title } = PROBLEM_KINDS[problem.kind]
-  const body = { ...problem.extensions, type: TYPE_BASE + problem.kind, title, status, detail: problem.message }
+  const body = {
+    ...problem.extensions,
+    type: TYPE_BASE + problem.kind,
+    title,
+    status,
+    detail: problem.message,
+  }
   return new Response(JSON.stringify(body), {
     status,
     headers: {
@@ -86,7 +92,9 @@ export function toProblem(error: unknown): Problem {
         cause: error,
       })
   }
-  return new Problem('internal', 'It has been logged. Try again; if it stays, tell the shop.', { cause: error })
+  return new Problem('internal', 'It has been logged. Try again; if it stays, tell the shop.', {
+    cause: error,
+  })
 }
 
 /**
