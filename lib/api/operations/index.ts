@@ -2,6 +2,7 @@ import type { Operation } from '../operation'
 import { commissioningOperations } from './commissionings'
 import { accountOperations } from './account'
 import { joiningOperations } from './joining'
+import { linkOperations } from './links'
 import { loggerOperations } from './loggers'
 import { noticeOperations } from './notices'
 import { peopleOperations } from './people'
@@ -17,6 +18,7 @@ export const OPERATIONS: readonly Operation[] = [
   ...commissioningOperations,
   ...readingOperations,
   ...noticeOperations,
+  ...linkOperations,
   ...visitOperations,
   ...peopleOperations,
   ...joiningOperations,
