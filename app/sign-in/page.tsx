@@ -1,4 +1,5 @@
 import type { Metadata } from 'next'
+import Link from 'next/link'
 import { redirect } from 'next/navigation'
 import { demoPassword, isDemo } from '@/app/mode'
 import { viewer as currentViewer } from '@/app/viewer'
@@ -28,7 +29,17 @@ export default async function SignInPage({ searchParams }: { searchParams: Searc
     <>
       <TitleBlock title="Sign in" datum="For owners of connected boats and for the shops that keep them." />
       <div className="sheet grid items-start gap-x-16 gap-y-10 lg:grid-cols-[minmax(0,28em)_minmax(0,1fr)]">
-        <SignInForm goTo={goTo} />
+        <div>
+          <SignInForm goTo={goTo} />
+          <p className="mt-4 flex flex-wrap gap-x-6">
+            <Link href="/forgot-password" className="inline-flex min-h-11 items-center">
+              Forgot the password?
+            </Link>
+            <Link href="/sign-up" className="inline-flex min-h-11 items-center">
+              No account yet? Sign up
+            </Link>
+          </p>
+        </div>
         {isDemo() ? <DemoAccounts accounts={ACCOUNTS} password={demoPassword()} goTo={goTo} /> : null}
       </div>
     </>

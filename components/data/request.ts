@@ -4,6 +4,8 @@ export class ApiProblem extends Error {
     readonly status: number,
     readonly type: string,
     sentence: string,
+    /** What is wrong with which field, where the server says so. */
+    readonly errors: readonly { path: string; message: string }[] = [],
   ) {
     super(sentence)
     this.name = 'ApiProblem'
@@ -12,14 +14,24 @@ export class ApiProblem extends Error {
 
 const NO_ANSWER = 'No answer from Middlewatch. Check the connection; nothing you entered is lost.'
 
+const isFieldError = (entry: unknown): entry is { path: string; message: string } =>
+  typeof entry === 'object' &&
+  entry !== null &&
+  'path' in entry &&
+  typeof entry.path === 'string' &&
+  'message' in entry &&
+  typeof entry.message === 'string'
+
 async function problemOf(response: Response): Promise<ApiProblem> {
   try {
-    const body: { type?: unknown; title?: unknown; detail?: unknown } = await response.json()
+    const body: { type?: unknown; title?: unknown; detail?: unknown; errors?: unknown } =
+      await response.json()
     const sentence = [body.detail, body.title].find((text) => typeof text === 'string' && text !== '')
     return new ApiProblem(
       response.status,
       typeof body.type === 'string' ? body.type : 'about:blank',
       typeof sentence === 'string' ? sentence : `The server answered ${response.status}.`,
+      Array.isArray(body.errors) ? body.errors.filter(isFieldError) : [],
     )
   } catch {
     return new ApiProblem(response.status, 'about:blank', `The server answered ${response.status}.`)

@@ -32,7 +32,13 @@ export function Header({ viewer, theme, demo }: { viewer: Viewer | null; theme: 
         </span>
         {viewer ? (
           <>
-            <span className="max-w-40 truncate text-ink-2">{viewer.name}</span>
+            <Link
+              href="/account"
+              className="inline-flex min-h-11 max-w-40 items-center truncate text-ink-2 no-underline hover:text-ink hover:underline"
+            >
+              <span className="sr-only">Account of </span>
+              <span className="truncate">{viewer.name}</span>
+            </Link>
             <SignOut />
           </>
         ) : (

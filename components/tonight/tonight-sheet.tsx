@@ -1,5 +1,6 @@
 'use client'
 
+import Link from 'next/link'
 import { useApi } from '@/components/data/use-api'
 import { VesselTonight } from '@/components/tonight/vessel-tonight'
 import { Empty, Loading, Trouble } from '@/components/ui/sheet-states'
@@ -23,7 +24,8 @@ export function TonightSheet() {
     return (
       <Empty title="No boat is yours here yet">
         The shop that fitted your logger sends an invitation by e-mail. Open its link while you are signed in,
-        and the boat stands here.
+        and the boat stands here. Or <Link href="/account/boat">set up a boat of your own</Link>, without a
+        shop.
       </Empty>
     )
   }

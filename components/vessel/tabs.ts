@@ -1,6 +1,9 @@
 import type { Rights } from '@/shared/schemas'
 
-export type VesselTab = { slug: '' | 'record' | 'pump' | 'notices' | 'visits' | 'set-up'; word: string }
+export type VesselTab = {
+  slug: '' | 'record' | 'pump' | 'notices' | 'visits' | 'set-up' | 'access'
+  word: string
+}
 
 /** The sheets of a vessel. What the reader may not see is not offered. */
 export function vesselTabs(rights: Rights): VesselTab[] {
@@ -14,5 +17,6 @@ export function vesselTabs(rights: Rights): VesselTab[] {
     { slug: 'visits', word: 'Visits' },
     { slug: 'set-up', word: 'Set-up' },
   )
+  if (rights.giveAccess) tabs.push({ slug: 'access', word: 'Access' })
   return tabs
 }

@@ -106,7 +106,12 @@ export async function setRecoveryCodes(
 }
 
 /** Uses a recovery code up. @returns false when it is none, or was used before */
-export async function useRecoveryCode(trx: Trx, personId: string, hash: Buffer, at: Date): Promise<boolean> {
+export async function spendRecoveryCode(
+  trx: Trx,
+  personId: string,
+  hash: Buffer,
+  at: Date,
+): Promise<boolean> {
   const count = await trx('recovery_code')
     .where({ person_id: personId, hash })
     .whereNull('used_at')

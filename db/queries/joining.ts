@@ -43,7 +43,7 @@ export async function findSignUp(
 }
 
 /** Uses up every open request of an address: the account is there now. */
-export async function useSignUps(trx: Trx, email: string, at: Date): Promise<void> {
+export async function spendSignUps(trx: Trx, email: string, at: Date): Promise<void> {
   await trx('sign_up').where({ email }).whereNull('used_at').update({ used_at: at })
 }
 

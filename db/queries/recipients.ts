@@ -1,3 +1,4 @@
+import { z } from 'zod'
 import type { Trx } from '@/db/roles'
 import {
   unitChoiceSchema,
@@ -5,6 +6,7 @@ import {
   type ContactSettings,
   type Units,
 } from '@/shared/schemas/people'
+import { noticeKindSchema, type NoticeKind } from '@/shared/schemas/words'
 import { DEFAULT_UNITS } from '@/shared/units'
 import type { Channel } from '@/db/queries/message-queue'
 
@@ -30,6 +32,10 @@ export interface Recipient {
   /** The hours in which they are not to be disturbed, as wall time of a zone. */
   quiet: { timeZone: string; start: string; end: string }
   contacts: ContactAddress[]
+  /** Kinds that every one of the shops in question chose to be told; null = the usual ones. Null for owners. */
+  shopKinds: NoticeKind[] | null
+  /** Of a shop's person: somebody is named to be called when nobody takes a notice up, and whether it is them. */
+  onCall: 'nobody-named' | 'yes' | 'no'
 }
 
 interface Row {
@@ -42,20 +48,25 @@ interface Row {
   time_zone: string
   quiet_start: string
   quiet_end: string
+  shop_kinds: string[] | null
+  on_call: Recipient['onCall']
 }
-
-const SHOP_QUIET = { start: '22:00', end: '07:00' }
 
 /** Owners of a vessel and the staff of every shop that its owner lets in or that keeps it. */
 export async function recipientsOf(trx: Trx, vesselId: string): Promise<Recipient[]> {
   const { rows } = (await trx.raw(
     `select p.id as person_id, p.name, p.email::text as email, p.units, 'owner' as standing, '{}'::text[] as roles,
-       v.time_zone, v.quiet_start::text, v.quiet_end::text
+       v.time_zone, v.quiet_start::text, v.quiet_end::text, null::text[] as shop_kinds, 'nobody-named' as on_call
      from vessel v join vessel_owner o on o.vessel_id = v.id and o.ended_at is null
      join person p on p.id = o.person_id and p.deleted_at is null
      where v.id = :vessel
      union all
-     select p.id, p.name, p.email::text, p.units, 'shop', array_agg(distinct m.role), min(s.time_zone), :start, :end
+     select p.id, p.name, p.email::text, p.units, 'shop', array_agg(distinct m.role), min(s.time_zone), min(s.quiet_start)::text,
+       min(s.quiet_end)::text,
+       case when bool_or(s.told_kinds is null) then null else array(select distinct k from shop x, unnest(x.told_kinds) k
+         where x.id = any (array_agg(s.id))) end,
+       case when bool_or(s.on_call_id = p.id) then 'yes' when bool_and(s.on_call_id is not null) then 'no'
+         else 'nobody-named' end
      from vessel v
      join shop s on s.id = v.kept_by_shop_id or s.id in
        (select shop_id from shop_access where vessel_id = v.id and withdrawn_at is null)
@@ -63,7 +74,7 @@ export async function recipientsOf(trx: Trx, vesselId: string): Promise<Recipien
      join person p on p.id = m.person_id and p.deleted_at is null
      where v.id = :vessel group by p.id
      order by standing, person_id`,
-    { vessel: vesselId, ...SHOP_QUIET },
+    { vessel: vesselId },
   )) as { rows: Row[] }
   const contacts = await contactsOf(trx, [...new Set(rows.map((row) => row.person_id))])
   return rows.map((row) => ({
@@ -75,6 +86,8 @@ export async function recipientsOf(trx: Trx, vesselId: string): Promise<Recipien
     roles: row.roles,
     quiet: { timeZone: row.time_zone, start: row.quiet_start, end: row.quiet_end },
     contacts: contacts.get(String(row.person_id)) ?? [],
+    shopKinds: row.shop_kinds === null ? null : z.array(noticeKindSchema).parse(row.shop_kinds),
+    onCall: row.on_call,
   }))
 }
 

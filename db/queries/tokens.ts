@@ -80,7 +80,7 @@ export async function countTokenTry(trx: Trx, hash: Buffer): Promise<void> {
 }
 
 /** Uses up all open tokens of a purpose, so that of several mails only one works, and it once. */
-export async function useTokens(
+export async function spendTokens(
   trx: Trx,
   which: { personId: string; purpose: TokenPurpose; subject?: string },
   at: Date,

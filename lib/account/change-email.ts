@@ -1,6 +1,6 @@
 import { noteAudit } from '@/db/queries/audit'
 import { findPersonByEmail } from '@/db/queries/people'
-import { insertToken, useTokens } from '@/db/queries/tokens'
+import { insertToken, spendTokens } from '@/db/queries/tokens'
 import { asIngest } from '@/db/roles'
 import { countMail } from '@/lib/auth/throttle'
 import type { Who } from '@/lib/auth/who'
@@ -25,7 +25,7 @@ export async function changeEmail(
   const { secret, hash } = newSecret()
   return asIngest(async (trx) => {
     const isFree = (await findPersonByEmail(trx, input.email)) === null
-    await useTokens(trx, { personId: who.personId, purpose: 'change-email' }, now)
+    await spendTokens(trx, { personId: who.personId, purpose: 'change-email' }, now)
     await insertToken(trx, {
       hash,
       purpose: 'change-email',

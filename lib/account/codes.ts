@@ -1,6 +1,6 @@
 import { createHash, randomBytes } from 'node:crypto'
 import { Secret, TOTP } from 'otpauth'
-import { lockFactor, noteFactorStep, useRecoveryCode } from '@/db/queries/account'
+import { lockFactor, noteFactorStep, spendRecoveryCode } from '@/db/queries/account'
 import type { Trx } from '@/db/roles'
 import { unseal } from './sealed'
 
@@ -55,5 +55,5 @@ export async function takeCode(trx: Trx, personId: string, code: string, now: Da
     await noteFactorStep(trx, personId, step)
     return true
   }
-  return useRecoveryCode(trx, personId, hashRecoveryCode(code), now)
+  return spendRecoveryCode(trx, personId, hashRecoveryCode(code), now)
 }

@@ -8,7 +8,7 @@ import {
   type ContactRow,
 } from '@/db/queries/account'
 import { noteAudit } from '@/db/queries/audit'
-import { countTokenTry, insertToken, newestToken, useTokens } from '@/db/queries/tokens'
+import { countTokenTry, insertToken, newestToken, spendTokens } from '@/db/queries/tokens'
 import { asIngest, type Trx } from '@/db/roles'
 import { noSuch } from '@/lib/access/require-right'
 import { countCode, countMail, countText } from '@/lib/auth/throttle'
@@ -66,7 +66,7 @@ export async function verifyContact(who: Who, id: string, code: string, now: Dat
       await countTokenTry(trx, token.hash)
       return 'wrong'
     }
-    await useTokens(trx, which, now)
+    await spendTokens(trx, which, now)
     await markVerified(trx, who.personId, id, now)
     await noteAudit(trx, { at: now, personId: who.personId, action: 'contact.verified' })
     return requireContact(trx, who, id)
@@ -140,7 +140,7 @@ async function sendProof(trx: Trx, who: Who, contact: ContactRow, now: Date): Pr
   const purpose = isPhone ? 'verify-phone' : 'confirm-contact'
   const code = newPhoneCode()
   const { secret, hash } = newSecret()
-  await useTokens(trx, { personId, purpose, subject: contact.id }, now)
+  await spendTokens(trx, { personId, purpose, subject: contact.id }, now)
   await insertToken(trx, {
     hash: isPhone ? hashPhoneCode(contact.id, code) : hash,
     purpose,

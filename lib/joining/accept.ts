@@ -6,7 +6,7 @@ import {
   type InvitationRow,
 } from '@/db/queries/invitations'
 import { noteAudit } from '@/db/queries/audit'
-import { addMembership, insertPerson, useSignUps } from '@/db/queries/joining'
+import { addMembership, insertPerson, spendSignUps } from '@/db/queries/joining'
 import { findPersonByEmail } from '@/db/queries/people'
 import { grantAccess } from '@/db/queries/vessels'
 import { asIngest, type Trx } from '@/db/roles'
@@ -104,7 +104,7 @@ async function newPerson(
   const personId = await insertPerson(trx, { email, name, passwordHash, at: now })
   // Somebody made the account in this very moment.
   if (personId === null) throw new Problem('not-signed-in', `Sign in as ${email} first, then accept.`)
-  await useSignUps(trx, email, now)
+  await spendSignUps(trx, email, now)
   await noteAudit(trx, { at: now, personId, action: 'account.made' })
   return personId
 }

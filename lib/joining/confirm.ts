@@ -6,9 +6,9 @@ import {
   verifyContact,
 } from '@/db/queries/account'
 import { noteAudit } from '@/db/queries/audit'
-import { addMembership, findSignUp, insertPerson, insertShop, useSignUps } from '@/db/queries/joining'
+import { addMembership, findSignUp, insertPerson, insertShop, spendSignUps } from '@/db/queries/joining'
 import { findPersonByEmail } from '@/db/queries/people'
-import { findToken, useTokens, type TokenPurpose } from '@/db/queries/tokens'
+import { findToken, spendTokens, type TokenPurpose } from '@/db/queries/tokens'
 import { asIngest } from '@/db/roles'
 import { countGuess } from '@/lib/auth/throttle'
 import { hashPassword } from '@/lib/auth/passwords'
@@ -60,11 +60,11 @@ export async function confirm(
     if (token === null || token.subject === null) throw deadLink()
     const { personId, purpose, subject } = token
     if (purpose === 'confirm-contact') {
-      await useTokens(trx, { personId, purpose, subject }, now)
+      await spendTokens(trx, { personId, purpose, subject }, now)
       await verifyContact(trx, personId, subject, now)
       return { kind: 'contact' as const, email: seen.email }
     }
-    await useTokens(trx, { personId, purpose }, now)
+    await spendTokens(trx, { personId, purpose }, now)
     if ((await findPersonByEmail(trx, subject)) !== null) throw deadLink()
     const before = await readEmail(trx, personId)
     await setEmail(trx, personId, subject, now)
@@ -100,7 +100,7 @@ async function makeAccount(
     const { email, name } = signUp
     const personId = await insertPerson(trx, { email, name, passwordHash, at: now })
     if (personId === null) throw deadLink()
-    await useSignUps(trx, email, now)
+    await spendSignUps(trx, email, now)
     await noteAudit(trx, { at: now, personId, action: 'account.made' })
     if (signUp.shopName !== null)
       await openShop(trx, {

@@ -1,7 +1,7 @@
 import { endAllSessions, markEmailConfirmed, readPersonMail } from '@/db/queries/account'
 import { noteAudit } from '@/db/queries/audit'
 import { findPersonByEmail, setPasswordHash } from '@/db/queries/people'
-import { findToken, insertToken, useTokens } from '@/db/queries/tokens'
+import { findToken, insertToken, spendTokens } from '@/db/queries/tokens'
 import { asIngest } from '@/db/roles'
 import { hashPassword } from '@/lib/auth/passwords'
 import { countGuess, countMail } from '@/lib/auth/throttle'
@@ -76,7 +76,7 @@ export async function resetPassword(
     await setPasswordHash(trx, personId, passwordHash)
     await markEmailConfirmed(trx, personId, now)
     await endAllSessions(trx, personId, now)
-    await useTokens(trx, { personId, purpose: 'reset-password' }, now)
+    await spendTokens(trx, { personId, purpose: 'reset-password' }, now)
     await noteAudit(trx, { at: now, personId, action: 'account.password-reset' })
     const person = await readPersonMail(trx, personId)
     await queueMail(

@@ -67,6 +67,7 @@ function isForShopPerson(person: Recipient, subject: Subject): boolean {
   if (subject.audience === 'owner') return false
   const isManager = person.roles.includes('manager')
   if (subject.transition !== 'escalated') return isManager
+  if (person.onCall !== 'nobody-named') return person.onCall === 'yes'
   return isManager || person.contacts.some((contact) => contact.settings.urgentAtNight)
 }
 
@@ -96,15 +97,16 @@ function contactsOf(person: Recipient, channel: Channel): ContactAddress[] {
 
 function wants(person: Recipient, contact: ContactAddress, subject: Subject): boolean {
   const { kind } = subject
-  const usual = usualKinds(person.as, contact.channel, subject)
+  const usual = usualKinds(person, contact.channel, subject)
   if (!(contact.settings.kinds ?? usual).includes(kind)) return false
   if (kind !== 'night-warning' || subject.chanceIfFlushedLast === null) return true
   return subject.chanceIfFlushedLast > (contact.settings.nightWarningChance ?? DEFAULT_NIGHT_CHANCE)
 }
 
-function usualKinds(as: 'owner' | 'shop', channel: Channel, subject: Subject): NoticeKind[] {
-  if (channel === 'sms') return BY_TEXT[as]
-  if (as === 'shop') return SHOP_KINDS
+function usualKinds({ as, shopKinds }: Recipient, channel: Channel, subject: Subject): NoticeKind[] {
+  // What the shop does not want to hear of comes to none of its people, unless they asked for it themselves.
+  if (channel === 'sms') return BY_TEXT[as].filter((kind) => shopKinds === null || shopKinds.includes(kind))
+  if (as === 'shop') return shopKinds ?? SHOP_KINDS
   if (subject.noShop) return [...OWNER_KINDS, ...SHOP_KINDS]
   return subject.audience === 'owner' ? [...OWNER_KINDS, 'logger-silent'] : OWNER_KINDS
 }

@@ -1,5 +1,6 @@
 'use client'
 
+import { OwnerAwaited } from '@/components/access/owner-awaited'
 import { useNow } from '@/components/data/use-now'
 import { useUnits } from '@/components/shell/units-context'
 import { Loading } from '@/components/ui/sheet-states'
@@ -49,6 +50,7 @@ export function SetUpTab({ id }: { id: string }) {
           </section>
         ))}
       </div>
+      <OwnerAwaited vessel={vessel} />
     </div>
   )
 }

@@ -22,6 +22,8 @@ const person = (changes: Partial<Recipient> = {}): Recipient => ({
   roles: [],
   quiet: { timeZone: 'Europe/London', start: '22:00', end: '07:00' },
   contacts: [contact({})],
+  shopKinds: null,
+  onCall: 'nobody-named',
   ...changes,
 })
 const about = (kind: NoticeKind, changes: Partial<Subject> = {}): Subject => ({
@@ -125,6 +127,23 @@ describe('a shop', () => {
     expect(by(onCall, escalated)).toEqual(['email', 'sms'])
     expect(by(technician, escalated)).toEqual([])
     expect(by(person(), escalated)).toEqual([])
+  })
+
+  it('hears only of the kinds that it chose', () => {
+    const choosy = person({ as: 'shop', roles: ['manager'], shopKinds: ['step', 'short-hold'] })
+    expect(kindsBy(choosy, 'email')).toEqual(['short-hold', 'step'])
+    expect(kindsBy(choosy, 'sms')).toEqual([])
+    const asked = person({ ...choosy, contacts: [contact({ settings: { kinds: ['freeze'] } })] })
+    expect(by(asked, about('freeze'))).not.toEqual([])
+  })
+
+  it('calls the one on call alone, once somebody is named', () => {
+    const escalated = about('running-on', { transition: 'escalated' })
+    expect(by(person({ as: 'shop', roles: ['technician'], onCall: 'yes' }), escalated)).toEqual([
+      'email',
+      'sms',
+    ])
+    expect(by(person({ as: 'shop', roles: ['manager'], onCall: 'no' }), escalated)).toEqual([])
   })
 
   it('is left out of what is meant for the owner alone', () => {
