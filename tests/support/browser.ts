@@ -1,21 +1,7 @@
-import { chromium, type Browser, type BrowserContext } from 'playwright-core'
+import type { Browser, BrowserContext } from 'playwright-core'
 import { serverUrl, signIn } from './client'
 
-/** Debian's Chromium without a window, and without calls to anywhere but the server under test. */
-export function launchBrowser(): Promise<Browser> {
-  return chromium.launch({
-    executablePath: '/usr/bin/chromium',
-    args: [
-      '--no-sandbox',
-      '--disable-gpu',
-      '--disable-quic',
-      '--no-first-run',
-      '--disable-background-networking',
-      '--disable-component-update',
-      '--disable-sync',
-    ],
-  })
-}
+export { launchBrowser } from './chromium'
 
 export const PHONE = { width: 390, height: 844 }
 export const DESKTOP = { width: 1440, height: 900 }
