@@ -21,6 +21,7 @@ beforeAll(async () => {
   browser = await launchBrowser()
   context = await contextOf(browser, 'installer@saltern.example', NARROW)
   page = await context.newPage()
+  page.setDefaultTimeout(20_000)
   page.on('pageerror', (error) => complaints.push(error.message))
   await later(0)
 })
