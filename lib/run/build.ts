@@ -15,13 +15,15 @@ const FILES = [
 
 /**
  * Builds the pages unless what stands in `.next` was made from the same sources.
+ * @param onBuild told when a build is needed, before it begins.
  * @returns whether a build was needed.
  * @throws Error with the end of the build's output when it fails.
  */
-export async function ensureBuild(root: string): Promise<boolean> {
+export async function ensureBuild(root: string, onBuild?: () => void): Promise<boolean> {
   const wanted = fingerprint(root)
   const stamp = path.join(root, '.next', 'middlewatch-build')
   if (existsSync(stamp) && readFileSync(stamp, 'utf8') === wanted) return false
+  onBuild?.()
   const output = await run(root)
   if (output.code !== 0) throw new Error(`the pages could not be built:\n${output.text.slice(-4000)}`)
   writeFileSync(stamp, wanted)

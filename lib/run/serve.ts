@@ -4,6 +4,7 @@ import { createServer } from 'node:net'
 import path from 'node:path'
 import { connect } from '@/db/knex'
 import { freePort, startLocalServer, type LocalServer } from '@/db/local-server'
+import { readEnvironment, type Environment } from '@/lib/env'
 import { ensureBuild } from '@/lib/run/build'
 import { startFamily } from '@/lib/run/family'
 import { takeLock } from '@/lib/run/lock'
@@ -15,8 +16,8 @@ const DATA = path.join(ROOT, '.data')
 /** Everything on one machine: database, pages, worker and, in the demo, the fakes and a live simulator. */
 export async function serve(): Promise<void> {
   const startedAt = Date.now()
-  const mode = process.env.MODE ?? (process.env.DATABASE_URL ? 'production' : 'demo')
-  const port = Number(process.env.PORT ?? 3000)
+  const environment = checkedEnvironment()
+  const { mode, port } = environment
   const host = process.env.HOST ?? '127.0.0.1'
   const undo: (() => Promise<void> | void)[] = []
   let stopping = false
@@ -54,7 +55,7 @@ export async function serve(): Promise<void> {
     const next = ['node_modules/next/dist/bin/next', 'start', '-H', host, '-p', String(port)]
     await family.begin('web', next, { ...env, NODE_ENV: 'production' }, /Ready in/)
     await family.begin('worker', entry('lib/run/worker.ts'), env, /worker ready/)
-    if (mode === 'demo' && process.env.SIMULATOR !== 'off') {
+    if (mode === 'demo' && environment.simulator) {
       await family.begin('simulator', [...entry('simulator/main.ts'), '--demo'], {
         ...env,
         SIM_STATE: path.join(DATA, 'simulator.json'),
@@ -68,9 +69,18 @@ export async function serve(): Promise<void> {
   }
 }
 
+/** Wrong settings and default secrets end the start before anything is begun. */
+function checkedEnvironment(): Environment {
+  try {
+    return readEnvironment(process.env)
+  } catch (error) {
+    console.error(`\nMiddlewatch: ${error instanceof Error ? error.message : String(error)}`)
+    process.exit(1)
+  }
+}
+
 async function build(): Promise<void> {
-  if (!existsSync(path.join(ROOT, '.next', 'middlewatch-build'))) console.log('Building the pages …')
-  await ensureBuild(ROOT)
+  await ensureBuild(ROOT, () => console.log('Building the pages …'))
 }
 
 /** The database of DATABASE_URL, or the private one with its data under `.data`. */
