@@ -15,6 +15,8 @@ export function navigationOf(viewer: Viewer | null, demo: boolean): NavigationIt
     items.push({ href: '/notices', word: 'Notices', counts: 'open-notices' })
     if (viewer.roles.some((role) => role === 'installer' || role === 'manager'))
       items.push({ href: '/loggers', word: 'Loggers' })
+    if (viewer.roles.includes('manager'))
+      items.push({ href: '/people', word: 'People' }, { href: '/shop', word: 'Shop' })
   }
   items.push({ href: '/calculators', word: 'Leak-down' })
   if (demo) items.push({ href: '/outbox', word: 'Outbox' })

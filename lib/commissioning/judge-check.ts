@@ -58,7 +58,12 @@ export async function judgeCheck(trx: Trx, row: CommissioningRow, asked: Asked):
   if (kind === 'leak-down-before') {
     if (step.leakDown === undefined) throw missing('leakDown', 'the two readings and the time between them')
     const resolutionPa = step.resolutionPa ?? GAUGE_RESOLUTION_PA.dial
-    const { rate, ...judged } = judgeLeakDownBefore({ ...step.leakDown, resolutionPa, differentialPa })
+    const { rate, ...judged } = judgeLeakDownBefore({
+      ...step.leakDown,
+      resolutionPa,
+      differentialPa,
+      limitSeconds: system.limitSeconds,
+    })
     return { ...plain(judged), keeps: { rate } }
   }
   if (logger === null) throw new Problem('conflict', 'Fit the logger first: the check reads what it sends.')

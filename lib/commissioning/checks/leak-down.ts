@@ -1,4 +1,9 @@
-import { DEFAULT_DIFFERENTIAL_PA, GAUGE_RESOLUTION_PA, judgeLeakDown } from '@/lib/analysis/leak-down'
+import {
+  DEFAULT_DIFFERENTIAL_PA,
+  GAUGE_RESOLUTION_PA,
+  judgeLeakDown,
+  type LeakDownVerdict,
+} from '@/lib/analysis/leak-down'
 import { inHgToPa, SECONDS_PER_HOUR } from '@/shared/units'
 import { middle } from './readings'
 import type { Judged, Reading, SeenRun } from './types'
@@ -24,9 +29,12 @@ const rateFigure = (name: string, rate: RateInterval): Judged['figures'][number]
   high: rate.high,
 })
 
+/** A rate by hand this much finer than what a tee may add is fine enough to be compared with. Judged, no source. */
+const BASELINE_SHARE = 0.8
+
 /**
- * The leak-down by hand gauge before anything is cut: what the boat leaks without the tee. It passes once the gauge
- * can tell, however leaky the boat.
+ * The leak-down by hand gauge before anything is cut: what the boat leaks without the tee. It passes once it is fine
+ * enough to compare with, however leaky the boat.
  * @param readings.resolutionPa what the gauge can be read to, Pa
  */
 export function judgeLeakDownBefore(readings: {
@@ -35,6 +43,7 @@ export function judgeLeakDownBefore(readings: {
   seconds: number
   resolutionPa: number
   differentialPa: number | null
+  limitSeconds: number
 }): Judged & { rate: RateInterval } {
   const differentialPa = readings.differentialPa ?? DEFAULT_DIFFERENTIAL_PA
   const answer = judgeLeakDown({ ...readings, differentialPa })
@@ -46,28 +55,38 @@ export function judgeLeakDownBefore(readings: {
     rateFigure('Leak rate before', rate),
     { name: 'It would hold', value: answer.holdSeconds, unit: 's' },
   ]
-  if (answer.verdict === 'cannot-tell')
+  if (answer.verdict === 'cannot-tell' && answer.moreMinutes === null)
     return {
       outcome: 'cannot-tell',
       figures,
       rate,
       reason:
-        answer.moreMinutes === null
-          ? 'The vacuum rose: that is weather or temperature. Do it again when the engine space is at an even temperature.'
-          : `The gauge cannot tell yet: wait ${answer.moreMinutes} more ${answer.moreMinutes === 1 ? 'minute' : 'minutes'} and read again.`,
+        'The vacuum rose: that is weather or temperature. Do it again when the engine space is at an even temperature.',
     }
-  return {
-    outcome: 'passed',
-    figures,
-    rate,
-    reason:
-      answer.verdict === 'tight'
-        ? 'The boat is tight before anything is fitted.'
-        : answer.verdict === 'weeping'
-          ? 'The boat weeps before anything is fitted. Tell the owner now, not after.'
-          : 'The boat leaks before anything is fitted. Tell the owner now, not after.',
-  }
+  const wanted = BASELINE_SHARE * allowedPaPerHour(differentialPa, readings.limitSeconds)
+  const longer = Math.ceil((((rate.high - rate.low) / 2 / wanted - 1) * readings.seconds) / 60)
+  if (longer > 0)
+    return {
+      outcome: 'cannot-tell',
+      figures,
+      rate,
+      reason: `Too short for what the gauge can be read to: wait ${longer} more ${longer === 1 ? 'minute' : 'minutes'} and read again.`,
+    }
+  return { outcome: 'passed', figures, rate, reason: BASELINES[answer.verdict] }
 }
+
+const BASELINES: Record<LeakDownVerdict, string> = {
+  tight: 'The boat is tight before anything is fitted.',
+  weeping: 'The boat weeps before anything is fitted. Tell the owner now, not after.',
+  leaking: 'The boat leaks before anything is fitted. Tell the owner now, not after.',
+  'short-cycling': 'The boat leaks badly before anything is fitted. Tell the owner now, not after.',
+  'cannot-tell':
+    'Fine enough to compare with; too short to say on which side of a limit the boat is. The logger will.',
+}
+
+/** What a tee may seem to add and still pass, Pa/h. */
+const allowedPaPerHour = (differentialPa: number, limitSeconds: number): number =>
+  (TEE_SHARE * differentialPa * SECONDS_PER_HOUR) / limitSeconds
 
 export interface LeakDownAfterAsked {
   /** Corrected; those since the step began. */
@@ -127,11 +146,11 @@ export function judgeLeakDownAfter(asked: LeakDownAfterAsked): Judged & { rate: 
     rateFigure('Leak rate after', rate),
     { name: 'It would hold', value: answer.holdSeconds, unit: 's' },
   ]
-  const allowedPaPerHour = (TEE_SHARE * differentialPa * SECONDS_PER_HOUR) / asked.limitSeconds
-  if (asked.before === null) return { ...judgedAlone(rate, allowedPaPerHour), figures, rate }
+  const allowed = allowedPaPerHour(differentialPa, asked.limitSeconds)
+  if (asked.before === null) return { ...judgedAlone(rate, allowed), figures, rate }
   const added = addedBy(asked.before, rate)
   return {
-    ...judgedBeside(added, allowedPaPerHour, seconds),
+    ...judgedBeside(added, allowed, seconds),
     figures: [...figures, rateFigure('The tee added', added)],
     rate,
   }
@@ -146,10 +165,10 @@ export function addedBy(before: RateInterval, after: RateInterval): RateInterval
 
 function judgedBeside(
   added: RateInterval,
-  allowedPaPerHour: number,
+  allowed: number,
   seconds: number,
 ): Pick<Judged, 'outcome' | 'reason'> {
-  if (added.high <= allowedPaPerHour)
+  if (added.high <= allowed)
     return { outcome: 'passed', reason: 'The tee adds no leak that matters. Not corrected for weather.' }
   if (added.low > 0)
     return {
@@ -157,18 +176,15 @@ function judgedBeside(
       reason:
         'It leaks more than before the tee went in. Tighten the tee’s clamps, look at its thread and seal, wet them and watch the rate, then begin again.',
     }
-  const longer = Math.max(
-    1,
-    Math.ceil(((added.high - added.paPerHour) / allowedPaPerHour - 0.5) * (seconds / 60)),
-  )
+  const longer = Math.max(1, Math.ceil(((added.high - added.paPerHour) / allowed - 0.5) * (seconds / 60)))
   return {
     outcome: 'cannot-tell',
     reason: `The two rates cannot be told apart well enough yet. Wait about ${longer} more ${longer === 1 ? 'minute' : 'minutes'}; if the reading by hand was the shorter one, that is what limits it.`,
   }
 }
 
-function judgedAlone(rate: RateInterval, allowedPaPerHour: number): Pick<Judged, 'outcome' | 'reason'> {
-  if (rate.high <= allowedPaPerHour)
+function judgedAlone(rate: RateInterval, allowed: number): Pick<Judged, 'outcome' | 'reason'> {
+  if (rate.high <= allowed)
     return {
       outcome: 'passed',
       reason:

@@ -7,6 +7,7 @@ const LEAST_GAUGE_PA = inHgToPa(5)
 /** Common practice, no source: a sensor further off than this is wrong, not in want of correction. */
 const GAIN_LIMIT = 0.05
 const STILL_PA = inHgToPa(0.1)
+const BESIDE_SECONDS = 30
 
 export interface TwoPointAsked {
   /** As read, not corrected, newest last. */
@@ -34,7 +35,10 @@ export interface Correction {
  */
 export function judgeTwoPoint(asked: TwoPointAsked): Judged & { correction: Correction | null } {
   const { zeroPa, gaugePa, resolutionPa, nowMs, freshSeconds } = asked
-  const recent = asked.readings.filter(({ atMs }) => atMs >= nowMs - freshSeconds * 1000)
+  const within = (seconds: number) => asked.readings.filter(({ atMs }) => atMs > nowMs - seconds * 1000)
+  // A fine rhythm gives a few readings to compare with; a coarse one the newest alone.
+  const beside = within(BESIDE_SECONDS)
+  const recent = beside.length > 0 ? beside : within(freshSeconds).slice(-1)
   const values = recent.flatMap(({ vacuumPa }) => (vacuumPa === null ? [] : [vacuumPa]))
   const readPa = values.length === 0 ? null : middle(values)
   const gain = readPa === null || zeroPa === null ? null : gaugePa / (readPa - zeroPa)
