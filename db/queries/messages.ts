@@ -27,7 +27,7 @@ const COLUMNS = `m.id, m.person_id as "personId", p.name as "personName", m.chan
     where s.message_id = m.id) as "noticeIds"`
 
 export interface MessageFilter {
-  /** Shops whose manager asks: messages to their staff, and about boats they see. */
+  /** Shops whose manager asks: messages about boats they see, and those to their staff that tell of no boat. */
   shopIds: string[]
   state?: 'waiting' | 'sent' | 'failed' | undefined
   messageId?: string | undefined
@@ -41,6 +41,7 @@ export async function readMessages(trx: Trx, filter: MessageFilter): Promise<Mes
     `select ${COLUMNS} from message m left join person p on p.id = m.person_id
      where m.purpose <> 'account' and m.cancelled_at is null
        and (m.person_id in (select person_id from membership where shop_id = any (cast(:shops as bigint[])) and ended_at is null)
+           and not exists (select 1 from message_subject s where s.message_id = m.id)
          or m.id in (select s.message_id from message_subject s join notice_event e on e.id = s.notice_event_id
            join notice n on n.id = e.notice_id join vessel v on v.id = n.vessel_id
            where v.kept_by_shop_id = any (cast(:shops as bigint[])) or v.id in (
