@@ -8,6 +8,7 @@ import { noticeOperations } from './notices'
 import { peopleOperations } from './people'
 import { readingOperations } from './reading'
 import { serviceOperations } from './service'
+import { suspectsOperations } from './suspects'
 import { vesselOperations } from './vessels'
 import { visitOperations } from './visits'
 
@@ -17,6 +18,7 @@ export const OPERATIONS: readonly Operation[] = [
   ...loggerOperations,
   ...commissioningOperations,
   ...readingOperations,
+  ...suspectsOperations,
   ...noticeOperations,
   ...linkOperations,
   ...visitOperations,
