@@ -15,16 +15,20 @@ const FILES = [
 
 /**
  * Builds the pages unless what stands in `.next` was made from the same sources.
- * @param onBuild told when a build is needed, before it begins.
+ * @param options.onBuild told when a build is needed, before it begins.
+ * @param options.signal ends a build that is under way.
  * @returns whether a build was needed.
  * @throws Error with the end of the build's output when it fails.
  */
-export async function ensureBuild(root: string, onBuild?: () => void): Promise<boolean> {
+export async function ensureBuild(
+  root: string,
+  options: { onBuild?: () => void; signal?: AbortSignal } = {},
+): Promise<boolean> {
   const wanted = fingerprint(root)
   const stamp = path.join(root, '.next', 'middlewatch-build')
   if (existsSync(stamp) && readFileSync(stamp, 'utf8') === wanted) return false
-  onBuild?.()
-  const output = await run(root)
+  options.onBuild?.()
+  const output = await run(root, options.signal)
   if (output.code !== 0) throw new Error(`the pages could not be built:\n${output.text.slice(-4000)}`)
   writeFileSync(stamp, wanted)
   return true
@@ -53,12 +57,13 @@ function readIfFile(file: string): Buffer {
   }
 }
 
-function run(root: string): Promise<{ code: number | null; text: string }> {
+function run(root: string, signal?: AbortSignal): Promise<{ code: number | null; text: string }> {
   return new Promise((resolve, reject) => {
     const child = spawn(process.execPath, ['node_modules/next/dist/bin/next', 'build'], {
       cwd: root,
       env: { ...process.env, NODE_ENV: 'production', NEXT_TELEMETRY_DISABLED: '1' },
       stdio: ['ignore', 'pipe', 'pipe'],
+      ...(signal === undefined ? {} : { signal }),
     })
     let text = ''
     child.stdout.on('data', (chunk: Buffer) => (text += chunk.toString()))

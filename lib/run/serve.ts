@@ -37,7 +37,10 @@ export async function serve(): Promise<void> {
     const lock = takeLock(DATA)
     undo.push(() => lock.release())
 
-    const [databaseUrl] = await Promise.all([openDatabase(undo), build()])
+    const databaseUrl = await openDatabase(undo)
+    const building = new AbortController()
+    undo.push(() => building.abort())
+    await ensureBuild(ROOT, { onBuild: () => console.log('Building the pages …'), signal: building.signal })
     const env = { ...process.env, ...settings(mode, port, databaseUrl) }
     await prepareDatabase(databaseUrl, { demo: mode === 'demo', demoPassword: env.DEMO_PASSWORD })
 
@@ -77,10 +80,6 @@ function checkedEnvironment(): Environment {
     console.error(`\nMiddlewatch: ${error instanceof Error ? error.message : String(error)}`)
     process.exit(1)
   }
-}
-
-async function build(): Promise<void> {
-  await ensureBuild(ROOT, () => console.log('Building the pages …'))
 }
 
 /** The database of DATABASE_URL, or the private one with its data under `.data`. */
