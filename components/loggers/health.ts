@@ -72,6 +72,11 @@ export function loggersFinding(views: readonly LoggerView[]): string {
   const stockWords = stock === 0 ? '' : ` ${many(stock, 'waits', 'wait')} in stock.`
   if (inUse.length === 0) return `No logger is on a boat yet.${stockWords}`
   const matters = inUse.filter((view) => view.matters.length > 0)
+  const awaited = inUse.filter(
+    ({ logger, place }) => place === 'assigned' && logger.lastHeardAt === null,
+  ).length
+  if (matters.length === 0 && awaited > 0)
+    return `${inUse.length - awaited} of ${many(inUse.length, 'logger', 'loggers')} on boats ${inUse.length - awaited === 1 ? 'is' : 'are'} heard and well; ${awaited} just registered ${awaited === 1 ? 'is' : 'are'} not heard yet.${stockWords}`
   if (matters.length === 0)
     return `${inUse.length === 1 ? 'The one logger on a boat is' : `All ${inUse.length} loggers on boats are`} heard and well.${stockWords}`
   const count = (test: (view: LoggerView) => boolean) => matters.filter(test).length

@@ -48,7 +48,10 @@ export function loggerFinding({ logger, place, matters }: LoggerView, nowMs: num
     : ''
   if (place === 'retired') return `Retired${logger.retiredAt ? ` ${ago(logger.retiredAt, nowMs)}` : ''}.`
   if (place === 'stock') return 'In stock: on no boat.'
-  if (matters.length === 0) return `On ${boat}, heard and well.`
+  if (matters.length === 0)
+    return logger.lastHeardAt === null
+      ? `On ${boat}, just registered and not heard yet.`
+      : `On ${boat}, heard and well.`
   return `On ${boat}: ${matters.join('; ')}.`
 }
 

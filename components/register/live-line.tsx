@@ -29,7 +29,7 @@ export function LiveLine({ id }: { id: string }) {
           aria-hidden="true"
         />
         {at === null ? (
-          'Waiting for the first reading.'
+          waitingWords(data?.lastHeardAt ?? null, now)
         ) : (
           <span>
             Last reading {ago(at, now)}
@@ -61,6 +61,11 @@ function Figure({ name, value }: { name: string; value: string }) {
     </div>
   )
 }
+
+const waitingWords = (lastHeardAt: string | null, nowMs: number): string =>
+  lastHeardAt === null
+    ? 'Waiting for the first reading.'
+    : `Nothing from the last ten minutes; last heard ${ago(lastHeardAt, nowMs)}.`
 
 /** "right", or by how much it is off. */
 export function clockWords(offsetSeconds: number): string {
