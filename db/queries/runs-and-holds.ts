@@ -17,6 +17,8 @@ export interface ListedRun {
   vacuumAtStartPa: number | null
   vacuumAtStopPa: number | null
   edgeUncertaintySeconds: number
+  rechargePaPerSecond: number | null
+  supplyV: number | null
 }
 
 const WITHIN = `x.system_id = :system and x.known_at <= :at
@@ -28,7 +30,8 @@ const WITHIN = `x.system_id = :system and x.known_at <= :at
 export async function listRuns(trx: Trx, systemId: string, span: ListSpan): Promise<ListedRun[]> {
   const { rows } = await trx.raw<{ rows: ListedRun[] }>(
     `select started_at as "startedAt", stopped_at as "stoppedAt", trigger, vacuum_at_start_pa as "vacuumAtStartPa",
-       vacuum_at_stop_pa as "vacuumAtStopPa", edge_uncertainty_seconds as "edgeUncertaintySeconds"
+       vacuum_at_stop_pa as "vacuumAtStopPa", edge_uncertainty_seconds as "edgeUncertaintySeconds",
+       recharge_pa_per_second as "rechargePaPerSecond", supply_v as "supplyV"
      from run x where ${WITHIN} order by started_at limit :limit`,
     { system: systemId, ...span },
   )

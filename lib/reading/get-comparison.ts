@@ -48,12 +48,17 @@ export async function compareSpans(
   now: Date,
 ): Promise<Comparison> {
   const [setting] = await readSettings(trx, [systemId], now)
-  const { ratio, pValue, verdict, hoursNeeded, ...sides } = compareBeforeAfter(
+  const { ratio, pValue, verdict, hoursNeeded, because, signs, ...sides } = compareBeforeAfter(
     await periodOf(trx, systemId, before, now),
     await periodOf(trx, systemId, after, now),
     { limitSeconds: setting?.limitSeconds ?? 10_800, pumpAmps: setting?.pumpAmps ?? null },
   )
-  return { before: sides.before, after: sides.after, ratio, pValue, verdict, hoursNeeded }
+  const sideOf = (side: 'before' | 'after') => ({
+    ...sides[side],
+    differentialPa: signs[side].differentialPa,
+    flowRatio: signs[side].ratio,
+  })
+  return { before: sideOf('before'), after: sideOf('after'), ratio, pValue, verdict, hoursNeeded, because }
 }
 
 async function spansOf(

@@ -1,6 +1,7 @@
 import { listRuns as runsOf } from '@/db/queries/runs-and-holds'
 import { asIngest, asPerson } from '@/db/roles'
 import { requireSystemRight } from '@/lib/access/require-right'
+import { rightsOf } from '@/lib/access/rights'
 import { openRowsAt } from '@/lib/figures'
 import type { List, Run, SpanQuery } from '@/shared/schemas'
 import { listSpan, pageByStart } from './list-span'
@@ -13,9 +14,9 @@ export async function listRuns(
   now: Date,
 ): Promise<List<Run>> {
   const span = listSpan(query, now)
-  const rows = await asPerson(personId, async (trx) => {
-    await requireSystemRight(trx, systemId, null)
-    return runsOf(trx, systemId, span)
+  const { rows, fullRecord } = await asPerson(personId, async (trx) => {
+    const standing = await requireSystemRight(trx, systemId, null)
+    return { rows: await runsOf(trx, systemId, span), fullRecord: rightsOf(standing).fullRecord }
   })
   const { run } = await asIngest((trx) => openRowsAt(trx, systemId, span.at.getTime()))
   const closed = rows.map((row) => ({
@@ -26,6 +27,8 @@ export async function listRuns(
     vacuumAtStartPa: row.vacuumAtStartPa,
     vacuumAtStopPa: row.vacuumAtStopPa,
     edgeUncertaintySeconds: row.edgeUncertaintySeconds,
+    rechargePaPerSecond: row.rechargePaPerSecond,
+    supplyV: fullRecord ? row.supplyV : null,
   }))
   const open: Run | null = run && {
     startedAt: new Date(run.startedAt).toISOString(),
@@ -35,6 +38,8 @@ export async function listRuns(
     vacuumAtStartPa: run.vacuumAtStartPa,
     vacuumAtStopPa: null,
     edgeUncertaintySeconds: run.edgeUncertaintySeconds,
+    rechargePaPerSecond: null,
+    supplyV: null,
   }
   return pageByStart<Run>(closed, open, span)
 }

@@ -91,6 +91,9 @@ export const comparisonSideSchema = z.object({
   holdTimeSeconds: z.number().nullable(),
   leakRatePaPerHour: z.number().nullable(),
   rechargePaPerSecond: z.number().nullable(),
+  differentialPa: z.number().nullable(),
+  /** K = r/(R + r), leak flow over pump flow: the same whatever the gas space. */
+  flowRatio: z.number().nullable(),
   runsPerDay: z.number().nullable(),
   pumpSecondsPerDay: z.number().nullable(),
   ampHoursPerDay: z.number().nullable(),
@@ -105,6 +108,8 @@ export const comparisonSchema = z.object({
   pValue: z.number().nullable(),
   verdict: repairVerdictSchema,
   hoursNeeded: z.number().nullable(),
+  /** What else than the leak explains a changed hold time; null where nothing does. */
+  because: z.enum(['gas-space', 'switch']).nullable(),
 })
 export type Comparison = z.infer<typeof comparisonSchema>
 

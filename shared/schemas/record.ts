@@ -11,6 +11,10 @@ export const runSchema = z.object({
   vacuumAtStartPa: z.number().nullable(),
   vacuumAtStopPa: z.number().nullable(),
   edgeUncertaintySeconds: z.number(),
+  /** Over the band between cut-in and cut-out; null where it cannot be told. */
+  rechargePaPerSecond: z.number().nullish(),
+  /** While it ran; null where not measured. Belongs to the full record: a charged supply says somebody is about. */
+  supplyV: z.number().nullish(),
 })
 export type Run = z.infer<typeof runSchema>
 

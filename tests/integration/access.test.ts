@@ -127,6 +127,11 @@ const READING: Case[] = [
     ask: (p, b) => p.get(`/api/systems/${b.systemId}/trace?${span()}`),
     may: ['owner', 'technician', 'manager'],
   },
+  {
+    operation: 'get /api/systems/{id}/suspects',
+    ask: (p, b) => p.get(`/api/systems/${b.systemId}/suspects`),
+    may: ['owner', 'technician', 'manager'],
+  },
   { operation: 'get /api/notices/{id}', ask: (p, b) => p.get(`/api/notices/${b.noticeId}`), may: ALL },
   { operation: 'get /api/visits/{id}', ask: (p, b) => p.get(`/api/visits/${b.visitId}`), may: ALL },
 ]
@@ -284,6 +289,7 @@ const OF_THE_ASKER = [
   'post /api/vessels',
   'get /api/loggers',
   'get /api/nights',
+  'get /api/outlook-score',
   'get /api/notices',
   'get /api/messages',
   'post /api/messages/{id}/resend',

@@ -44,6 +44,8 @@ export const HANDLERS: Record<string, Expectation> = {
   'GET /api/systems/{id}/comparison':            '401  404 404  404 404  ok   ok  ok  ok   ok',
   // The installer sees the full record while fitting alone.
   'GET /api/systems/{id}/trace':                 '401  404 404  404 404  ok   ok  403 ok   403',
+  'GET /api/systems/{id}/suspects':              '401  404 404  404 404  ok   ok  403 ok   403',
+  'GET /api/outlook-score':                      '401  ok  ok   ok  ok   ok   ok  ok  ok   ok',
   'GET /api/nights':                             '401  ok  ok   ok  ok   ok   ok  ok  ok   ok',
 
   // Loggers
