@@ -1,4 +1,4 @@
-import type { FleetBoat } from '@/components/fleet/order'
+import type { FleetRow } from '@/shared/schemas'
 import { rowName } from '@/components/fleet/fleet-words'
 import { STATE_TONES } from '@/components/states'
 
@@ -8,7 +8,7 @@ const said = (count: number, one: string, many: string): string => `${count} ${c
  * The fleet in a sentence: how many want attention, how many are likely to run tonight, and which are silent.
  * "2 want attention, 3 are likely to run tonight, 1 is unheard." · "All 12 hold, and none is likely to run tonight."
  */
-export function fleetFinding(rows: readonly FleetBoat[]): string {
+export function fleetFinding(rows: readonly FleetRow[]): string {
   const attention = rows.filter((row) => STATE_TONES[row.state] === 'attention')
   const running = rows.filter((row) => (row.tonight?.chanceIfFlushedLast ?? 0) >= 0.5)
   const unheard = rows.filter((row) => row.state === 'unheard')

@@ -6,7 +6,7 @@ import { HoldLines, HoldMark } from '@/components/charts/hold-scale'
 import { NightRow, stripWords } from '@/components/charts/night-strip'
 import { movingWords, rowName, tonightWords } from '@/components/fleet/fleet-words'
 import { holdWords } from '@/components/figures'
-import type { FleetBoat } from '@/components/fleet/order'
+import type { FleetRow } from '@/shared/schemas'
 import { drawnOn, finishedNights, withSilence } from '@/components/nights'
 import { NOTICE_WORDS } from '@/components/notices/words'
 import { isTroubled } from '@/components/states'
@@ -23,7 +23,7 @@ function nightsLabel(nights: readonly Night[]): string {
 }
 
 type Props = {
-  row: FleetBoat
+  row: FleetRow
   index: number
   nights: readonly Night[] | undefined
   nowMs: number

@@ -6,24 +6,24 @@ import { useNow } from '@/components/data/use-now'
 import { FleetFilters } from '@/components/fleet/fleet-filters'
 import { FleetTable } from '@/components/fleet/fleet-table'
 import { fleetFinding } from '@/components/fleet/finding'
-import { sortRows, type FleetBoat } from '@/components/fleet/order'
+import { sortRows } from '@/components/fleet/order'
 import { useFleetView } from '@/components/fleet/use-fleet-view'
 import { countStates, filterRows, harboursOf } from '@/components/fleet/view-state'
 import { clock, dayOf } from '@/components/time'
 import { Button } from '@/components/ui/button'
 import { Empty, Loading, Trouble } from '@/components/ui/sheet-states'
 import { TitleBlock } from '@/components/ui/title-block'
-import type { List } from '@/shared/schemas'
+import type { FleetRow, List } from '@/shared/schemas'
 
 const DATUM =
   'Hold time: how long without a flush before the pump runs. Dotted: the limit. Full line: the aim.'
-const NONE: FleetBoat[] = []
+const NONE: FleetRow[] = []
 
 /** Every boat the shop may see, on one scale, worst first. */
 export function FleetSheet() {
   const now = useNow()
   const [view, change] = useFleetView()
-  const { data, error, mutate } = useApi<List<FleetBoat>>('/api/vessels?limit=5000', { refreshMs: 60_000 })
+  const { data, error, mutate } = useApi<List<FleetRow>>('/api/vessels?limit=5000', { refreshMs: 60_000 })
   const rows = data?.items ?? NONE
   const counts = useMemo(() => countStates(rows), [rows])
   const harbours = useMemo(() => harboursOf(rows), [rows])

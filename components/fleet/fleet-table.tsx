@@ -4,7 +4,7 @@ import { useWindowVirtualizer } from '@tanstack/react-virtual'
 import { useEffect, useLayoutEffect, useRef, useState, type KeyboardEvent } from 'react'
 import { FleetHead } from '@/components/fleet/fleet-head'
 import { FleetRowCells } from '@/components/fleet/fleet-row'
-import type { FleetBoat } from '@/components/fleet/order'
+import type { FleetRow } from '@/shared/schemas'
 import { useNightsInView } from '@/components/fleet/use-nights-in-view'
 import { usePrinting } from '@/components/fleet/use-printing'
 
@@ -23,7 +23,7 @@ const moved = (key: string, at: number, last: number): number | null => {
 }
 
 /** The rows, of which only those in view exist; arrow keys move from boat to boat, Enter opens one. */
-export function FleetTable({ rows, nowMs }: { rows: readonly FleetBoat[]; nowMs: number }) {
+export function FleetTable({ rows, nowMs }: { rows: readonly FleetRow[]; nowMs: number }) {
   const body = useRef<HTMLDivElement>(null)
   const [margin, setMargin] = useState(0)
   const [current, setCurrent] = useState(0)

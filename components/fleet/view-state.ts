@@ -1,6 +1,7 @@
 import { rowName } from '@/components/fleet/fleet-words'
-import { SORTS, type FleetBoat, type Sort } from '@/components/fleet/order'
+import { SORTS, type Sort } from '@/components/fleet/order'
 import { stateOf, STATES, type SystemState } from '@/components/states'
+import type { FleetRow } from '@/shared/schemas'
 
 /** How the fleet is being looked at; all of it lives in the address, so that a link shows the same. */
 export type FleetView = { find: string; states: SystemState[]; harbour: string; sort: Sort }
@@ -30,7 +31,7 @@ export function viewQuery(view: FleetView): string {
 const folded = (text: string): string => text.normalize('NFKD').replace(/\p{M}/gu, '').toLowerCase()
 
 /** Rows that answer to every word typed (boat, system, berth, harbour), in the harbour and states chosen. */
-export function filterRows(rows: readonly FleetBoat[], view: FleetView): FleetBoat[] {
+export function filterRows(rows: readonly FleetRow[], view: FleetView): FleetRow[] {
   const words = folded(view.find).split(/\s+/).filter(Boolean)
   return rows.filter((row) => {
     if (view.states.length > 0 && !view.states.includes(row.state)) return false
@@ -42,7 +43,7 @@ export function filterRows(rows: readonly FleetBoat[], view: FleetView): FleetBo
 }
 
 /** How many rows are in each state, in the order of the states; those with none are left out. */
-export function countStates(rows: readonly FleetBoat[]): { state: SystemState; count: number }[] {
+export function countStates(rows: readonly FleetRow[]): { state: SystemState; count: number }[] {
   const counts = new Map<SystemState, number>()
   for (const row of rows) counts.set(row.state, (counts.get(row.state) ?? 0) + 1)
   return STATES.flatMap((state) => {
@@ -52,5 +53,5 @@ export function countStates(rows: readonly FleetBoat[]): { state: SystemState; c
 }
 
 /** The harbours there are, in order of their names. */
-export const harboursOf = (rows: readonly FleetBoat[]): string[] =>
+export const harboursOf = (rows: readonly FleetRow[]): string[] =>
   [...new Set(rows.flatMap((row) => row.harbour ?? []))].sort((a, b) => a.localeCompare(b, 'en'))

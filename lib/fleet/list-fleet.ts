@@ -26,8 +26,8 @@ export async function listFleet(
   now: Date,
 ): Promise<List<FleetRow>> {
   const seen = await asPerson(personId, readSeenVessels)
-  const vesselIds = page.vessel === undefined ? seen : seen.filter((id) => id === page.vessel)
-  const sources = await asIngest((trx) => readFleet(trx, now, vesselIds))
+  const vesselIds = page.vessel === undefined ? seen.ids : seen.ids.filter((id) => id === page.vessel)
+  const sources = await asIngest((trx) => readFleet(trx, now, vesselIds, seen.full))
   const rows = sources.map((source) => toRow(source, now)).sort(worstFirst)
   return pageOf(rows, page, (row) => row.systemId)
 }
@@ -69,6 +69,7 @@ function toRow(source: FleetSource, now: Date): FleetRow {
     lastHeardAt: source.lastHeardAt?.toISOString() ?? null,
     openNotices: source.openNotices,
     nextVisitAt: source.nextVisitAt?.toISOString() ?? null,
+    aboard: source.aboard,
   }
 }
 
@@ -92,8 +93,12 @@ const rounded = (hold: HoldTime): HoldTime => ({
 const thousandth = (value: number | null): number | null =>
   value === null ? null : Math.round(value * 1000) / 1000
 
+/** Of two that are as bad, the one that wakes somebody comes first. */
+const ashore = (row: FleetRow): number => (row.aboard === 'aboard' ? 0 : 1)
+
 const worstFirst = (a: FleetRow, b: FleetRow): number =>
   WORST_FIRST.indexOf(a.state) - WORST_FIRST.indexOf(b.state) ||
+  ashore(a) - ashore(b) ||
   (a.holdTime?.seconds ?? Infinity) - (b.holdTime?.seconds ?? Infinity) ||
   a.name.localeCompare(b.name) ||
   Number(a.systemId) - Number(b.systemId)

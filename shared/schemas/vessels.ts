@@ -171,6 +171,8 @@ export const fleetRowSchema = z.object({
   lastHeardAt: instantSchema.nullable(),
   openNotices: z.array(noticeKindSchema),
   nextVisitAt: instantSchema.nullable(),
+  /** Null where the reader may not know who is aboard. */
+  aboard: aboardSchema.nullable(),
 })
 export type FleetRow = z.infer<typeof fleetRowSchema>
 

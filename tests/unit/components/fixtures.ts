@@ -63,6 +63,7 @@ export const row = (change: Partial<FleetRow> = {}): FleetRow => ({
   lastHeardAt: '2026-12-01T22:39:00Z',
   openNotices: [],
   nextVisitAt: null,
+  aboard: 'unknown',
   ...change,
 })
 
