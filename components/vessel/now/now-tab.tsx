@@ -5,6 +5,7 @@ import { useUnits } from '@/components/shell/units-context'
 import { finishedNights } from '@/components/nights'
 import { isTroubled } from '@/components/states'
 import { LastNights } from '@/components/tonight/last-nights'
+import { BeforeYouGo } from '@/components/vessel/before-you-go/before-you-go'
 import { useVessel } from '@/components/vessel/use-vessel'
 import { useNights, useOutlook, useSummary } from '@/components/vessel/use-figures'
 import { nowFigures } from '@/components/vessel/now/figures'
@@ -64,6 +65,7 @@ export function NowTab({ id }: { id: string }) {
         ) : (
           <p className="text-ink-2">No night has been heard yet.</p>
         )}
+        <BeforeYouGo vessel={vessel} system={system} />
       </div>
     </div>
   )
