@@ -66,7 +66,8 @@ export function RecordView({ commissioning, nowMs }: { commissioning: Commission
           {commissioning.note ? <Line name="Note" value={commissioning.note} /> : null}
         </tbody>
       </table>
-      <ol className="mt-6">
+      <h2 className="mt-8">Checks, in the order they were done</h2>
+      <ol>
         {done.map((check, index) => (
           <li key={index} className="break-inside-avoid border-b border-line py-4">
             <h3>

@@ -152,15 +152,13 @@ export async function finishCommissioning(
   id: string,
   end: { at: Date; by: string; passed: boolean; note: string | null },
 ): Promise<void> {
-  await trx('commissioning')
-    .where({ id })
-    .update({
-      finished_at: end.at,
-      finished_by: end.by,
-      passed: end.passed,
-      note: end.note,
-      set_aside_at: null,
-    })
+  await trx('commissioning').where({ id }).update({
+    finished_at: end.at,
+    finished_by: end.by,
+    passed: end.passed,
+    note: end.note,
+    set_aside_at: null,
+  })
 }
 
 /** Locked until the end of the transaction, so that two phones cannot conclude the same step at once. */
@@ -268,7 +266,7 @@ export interface RawReading {
   supplyV: number | null
 }
 
-/** A logger's newest samples as stored in [from, to], ascending, at most `limit`. Service's role. */
+/** A logger's newest samples as stored in (from, to], ascending, at most `limit`. Service's role. */
 export async function newestReadings(
   trx: Trx,
   loggerId: string,
@@ -278,7 +276,7 @@ export async function newestReadings(
     `select * from (
        select (extract(epoch from at) * 1000)::float8 as "atMs", vacuum_pa::float8 as "vacuumPa", pump_on as "pumpOn",
          air_c::float8 as "airC", barometer_pa::float8 as "barometerPa", supply_v::float8 as "supplyV"
-       from sample where logger_id = cast(:loggerId as integer) and at between :from and :to
+       from sample where logger_id = cast(:loggerId as integer) and at > :from and at <= :to
        order by at desc limit :limit) x
      order by "atMs"`,
     { loggerId, ...span },
@@ -298,4 +296,19 @@ export async function readCorrection(
     { loggerId, at },
   )
   return rows[0] ?? { vacuumOffsetPa: 0, vacuumGain: 1 }
+}
+
+/** What is said of a system at an instant, and since when. */
+export async function saidOfSystem(
+  trx: Trx,
+  systemId: string,
+  at: Date,
+): Promise<{ value: string; from: Date } | null> {
+  const { rows } = await trx.raw<{ rows: { value: string; from: Date }[] }>(
+    `select value, from_at as "from" from statement
+     where system_id = :systemId and from_at <= :at and (until_at is null or until_at > :at)
+     order by from_at desc, id desc limit 1`,
+    { systemId, at },
+  )
+  return rows[0] ?? null
 }

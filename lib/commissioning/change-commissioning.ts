@@ -1,11 +1,12 @@
 import { finishCommissioning, lockCommissioning, updateCommissioning } from '@/db/queries/commissioning'
 import { noteAudit } from '@/db/queries/audit'
-import { checkedWrite } from '@/lib/access/checked-write'
+import { checkedWrite, type Rederive } from '@/lib/access/checked-write'
 import { requireSystemRight } from '@/lib/access/require-right'
 import type { Who } from '@/lib/auth/who'
 import { getClaim } from '@/lib/loggers/answer-claim'
 import { Problem } from '@/lib/problem'
 import type { ChangeCommissioning, Commissioning } from '@/shared/schemas'
+import { sayDone } from './at-work'
 import { allPassed } from './on-wire'
 import { getCommissioning } from './read-commissionings'
 import { requireOpen } from './require-commissioning'
@@ -19,9 +20,10 @@ export async function changeCommissioning(
   id: string,
   change: ChangeCommissioning,
   now: Date,
+  rederive: Rederive,
 ): Promise<Commissioning> {
   const claim = change.userCode === undefined ? null : await getClaim(who, change.userCode, now)
-  await checkedWrite(
+  const row = await checkedWrite(
     who.personId,
     async (trx) => {
       const row = await requireOpen(trx, who, id, now)
@@ -30,14 +32,18 @@ export async function changeCommissioning(
         throw new Problem('conflict', 'The logger is fitted already: move it from its own page.')
       if (row.fittedAt !== null && claim !== null)
         throw new Problem('conflict', 'The logger has its key already.')
+      return row
     },
-    (trx) =>
-      updateCommissioning(trx, id, {
+    async (trx, found) => {
+      await updateCommissioning(trx, id, {
         ...(change.systemId === undefined ? {} : { systemId: change.systemId }),
         ...(claim === null ? {} : { userCode: claim.userCode, serial: claim.serial }),
         ...(change.setAside === undefined ? {} : { setAsideAt: change.setAside ? now : null }),
-      }),
+      })
+      return found
+    },
   )
+  if (change.setAside === true) await sayDone(who, row, now, rederive)
   return getCommissioning(who, id, now)
 }
 
@@ -47,8 +53,9 @@ export async function finish(
   id: string,
   note: string | undefined,
   now: Date,
+  rederive: Rederive,
 ): Promise<Commissioning> {
-  await checkedWrite(
+  const signedOff = await checkedWrite(
     who.personId,
     async (trx) => {
       const row = await requireOpen(trx, who, id, now)
@@ -72,7 +79,9 @@ export async function finish(
         action: 'logger.commissioned',
         detail: { commissioningId: id, loggerId: row.logger?.id, passed },
       })
+      return row
     },
   )
+  await sayDone(who, signedOff, now, rederive)
   return getCommissioning(who, id, now)
 }

@@ -12,6 +12,7 @@ import type { Who } from '@/lib/auth/who'
 import { calibrateLogger } from '@/lib/loggers/manage-logger'
 import { Problem } from '@/lib/problem'
 import type { CheckKind, Commissioning, StepCheck } from '@/shared/schemas'
+import { sayAtWork } from './at-work'
 import { judgeCheck } from './judge-check'
 import { getCommissioning } from './read-commissionings'
 import { requireOpen } from './require-commissioning'
@@ -35,6 +36,7 @@ export async function stepCheck(
   if (row.system === null) throw new Problem('conflict', 'Choose the boat and its system first.')
   if (row.logger === null && kind !== 'leak-down-before')
     throw new Problem('conflict', 'Fit the logger first: the check reads what it sends.')
+  if (step.step === 'begin') await sayAtWork(who, row, now, rederive)
   if (step.step === 'done') await conclude(who, row, { kind, step, now, rederive })
   else
     await asIngest(async (trx) => {

@@ -130,8 +130,14 @@ describe('a logger is registered from its code to its record', () => {
 
     await fitting.step('first-reading', { step: 'begin' })
     expect(await fitting.conclude('first-reading')).toMatchObject({ outcome: null, reason: /powered/ })
+    const stateOf = async () =>
+      (await manager.get<{ state: string }>(`/api/systems/${fitting.systemId}/summary`, fitting.headers()))
+        .body.state
     await fitting.live(10, 2, () => 0)
     expect(await fitting.conclude('first-reading')).toMatchObject({ outcome: 'passed' })
+
+    // Notices are held while the checks are made: a pump off at its breaker is no news to its owner.
+    expect(await stateOf()).toBe('worked-on')
 
     await fitting.step('leak-down-before', { step: 'begin' })
     fitting.now += 1_800_000
@@ -204,6 +210,7 @@ describe('a logger is registered from its code to its record', () => {
       {},
     )
     expect(done.body).toMatchObject({ passed: true, finishedBy: 'Ines Kelpwright' })
+    expect(await stateOf()).not.toBe('worked-on')
     const late = await fitting.ask(installer, 'POST', `/api/commissionings/${fitting.id}/checks/zero`, {
       step: 'begin',
     })

@@ -56,5 +56,12 @@ export function judgeFirstReading(asked: {
       reason:
         'Heard, but its clock is over two minutes off. Restart it where it has a signal, so that it fetches the time; a coin cell that is empty loses it again.',
     }
-  return { outcome: 'passed', figures, reason: 'Heard with every channel, and its clock is right.' }
+  return {
+    outcome: 'passed',
+    figures,
+    reason:
+      clockOffsetSeconds === null
+        ? 'Heard with every channel; it does not tell what its clock says.'
+        : 'Heard with every channel, and its clock is right.',
+  }
 }

@@ -1,3 +1,4 @@
+import { rederiveAt } from '@/ingest/rederive'
 import { handle } from '@/lib/api/handle'
 import { methods } from '@/lib/api/methods'
 import * as operations from '@/lib/api/operations/commissionings'
@@ -9,6 +10,6 @@ export const { GET, POST, PUT, PATCH, DELETE } = methods({
     getCommissioning(person, params.id, now),
   ),
   PATCH: handle(operations.changeCommissioning, ({ person, params, body, now }) =>
-    changeCommissioning(person, params.id, body, now),
+    changeCommissioning(person, params.id, body, now, rederiveAt(now)),
   ),
 })
