@@ -11,6 +11,8 @@ import { Empty, Loading, Trouble } from '@/components/ui/sheet-states'
 import { pumpFinding } from '@/components/vessel/pump/finding'
 import { pumpDays, rechargePoints } from '@/components/vessel/pump/pump-days'
 import { PumpDaysTable } from '@/components/vessel/pump/pump-days-table'
+import { supplyBins } from '@/components/vessel/pump/supply-bins'
+import { SupplyTable } from '@/components/vessel/pump/supply-table'
 import { useSummary } from '@/components/vessel/use-figures'
 import { useVessel } from '@/components/vessel/use-vessel'
 import type { Run } from '@/shared/schemas'
@@ -38,6 +40,7 @@ export function PumpTab({ id }: { id: string }) {
     () => pumpDays(data ?? [], vessel?.utcOffsetSeconds ?? 0, system?.settings.pumpAmps ?? null),
     [data, vessel?.utcOffsetSeconds, system?.settings.pumpAmps],
   )
+  const bins = useMemo(() => supplyBins(data ?? []), [data])
   const high = points.reduce((most, point) => Math.max(most, point.value), 0) * 1.15 || 1
   const ticks = useMemo(() => linearTicks(0, high, 5), [high])
   if (!vessel || !system) return null
@@ -75,6 +78,7 @@ export function PumpTab({ id }: { id: string }) {
         Only runs by themselves: they refill the same differential each time, so a change is the pump’s. The
         line is the usual recharge.
       </p>
+      <SupplyTable bins={bins} unit={units.vacuum} />
       <h2 className="mt-8 mb-2">Day by day</h2>
       <PumpDaysTable days={days} />
     </>

@@ -7,9 +7,11 @@ import { finishedNights } from '@/components/nights'
 import { isTroubled } from '@/components/states'
 import { LastNights } from '@/components/tonight/last-nights'
 import { Empty } from '@/components/ui/sheet-states'
+import { CompareSection } from '@/components/vessel/record/compare-section'
 import { HoldsSection } from '@/components/vessel/record/holds-section'
 import { stepMarks, visitMarks } from '@/components/vessel/record/marks'
 import { TraceSection } from '@/components/vessel/record/trace-section'
+import { trendWords } from '@/components/vessel/record/trend-words'
 import { useVessel } from '@/components/vessel/use-vessel'
 import { useNights, useTrend } from '@/components/vessel/use-figures'
 import { VesselHeadline } from '@/components/vessel/vessel-headline'
@@ -55,7 +57,18 @@ export function RecordTab({ id }: { id: string }) {
           consent or an open visit.
         </Empty>
       )}
+      {trend ? (
+        <section className="mt-9" aria-labelledby="trend-title">
+          <h2 id="trend-title" className="mb-2">
+            Trend
+          </h2>
+          <p className="max-w-[46em]">
+            {trendWords(trend, system.settings.limitSeconds, vessel.utcOffsetSeconds, now)}
+          </p>
+        </section>
+      ) : null}
       <HoldsSection vessel={vessel} system={system} steps={steps} visits={came} />
+      <CompareSection vessel={vessel} system={system} visits={visits?.items ?? []} />
       {listed.length > 0 ? (
         <section className="mt-9 max-w-[60rem]" aria-labelledby="nights-title">
           <h2 id="nights-title" className="mb-2">
