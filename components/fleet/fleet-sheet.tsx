@@ -5,6 +5,7 @@ import { useApi } from '@/components/data/use-api'
 import { useNow } from '@/components/data/use-now'
 import { FleetFilters } from '@/components/fleet/fleet-filters'
 import { FleetTable } from '@/components/fleet/fleet-table'
+import { OutlookScoreLine } from '@/components/fleet/outlook-score-line'
 import { fleetFinding } from '@/components/fleet/finding'
 import { sortRows } from '@/components/fleet/order'
 import { useFleetView } from '@/components/fleet/use-fleet-view'
@@ -52,6 +53,7 @@ export function FleetSheet() {
         {rows.length > 0 ? (
           <>
             <p className="mb-4 max-w-[44em] text-finding tracking-[-0.015em]">{fleetFinding(rows)}</p>
+            <OutlookScoreLine />
             <FleetFilters view={view} change={change} counts={counts} harbours={harbours} />
             {shown.length > 0 ? (
               <FleetTable rows={shown} nowMs={now} />

@@ -8,5 +8,5 @@ import type { OutlookScore } from '@/shared/schemas'
 export function OutlookScoreLine() {
   const { data } = useApi<OutlookScore>('/api/outlook-score', { refreshMs: 15 * 60_000 })
   const said = data ? outlookScoreWords(data) : ''
-  return said === '' ? null : <p className="datum mt-4">{said}</p>
+  return said === '' ? null : <p className="datum mb-4 -mt-2">{said}</p>
 }
