@@ -6,6 +6,10 @@ const config: NextConfig = {
   poweredByHeader: false,
   reactStrictMode: true,
   devIndicators: false,
+  // For files that are served as they lie; pages and handlers set more, and their own.
+  headers: async () => [
+    { source: '/:path*', headers: [{ key: 'x-content-type-options', value: 'nosniff' }] },
+  ],
   // Types are checked by the tests; a start need not wait for it.
   typescript: { ignoreBuildErrors: true },
 }

@@ -10,6 +10,8 @@ export function proxy(request: NextRequest): NextResponse {
   const headers = new Headers(request.headers)
   headers.set('x-nonce', nonce)
   headers.set('content-security-policy', policy)
+  // Where a layout that sends somebody to sign in brings them back to.
+  headers.set('x-path', `${request.nextUrl.pathname}${request.nextUrl.search}`)
   const response = NextResponse.next({ request: { headers } })
   response.headers.set('content-security-policy', policy)
   response.headers.set('x-content-type-options', 'nosniff')
@@ -43,5 +45,6 @@ function contentSecurityPolicy(nonce: string): string {
 
 export const config = {
   // Not the API: a proxy that sees an upload cuts its body at 10 MB without a word, and handlers set their own headers.
-  matcher: ['/((?!api/|_next/static|_next/image|.*\\.(?:svg|png|ico|woff2|webmanifest|js)$).*)'],
+  // Of names that end like a file's only those at the root: `/vessels/1.js` is a page, and carries a page's headers.
+  matcher: ['/((?!api/|_next/static|_next/image|[^/]*\\.(?:svg|png|ico|woff2|webmanifest|js)$).*)'],
 }
