@@ -1,6 +1,7 @@
+import { headers } from 'next/headers'
 import { notFound } from 'next/navigation'
 import { cache } from 'react'
-import { whoViews } from '@/lib/auth/page'
+import { requireViewer, whoViews } from '@/lib/auth/page'
 import { Problem } from '@/lib/problem'
 import { getVessel } from '@/lib/vessels/get-vessel'
 import type { Vessel } from '@/shared/schemas'
@@ -21,10 +22,14 @@ const visibleVessel = cache(
   },
 )
 
-/** What one may not see does not exist: its pages answer 404, as its data does. Nobody signed in is the page's matter. */
+/**
+ * What one may not see does not exist: its pages answer 404, as its data does. Nobody is sent to sign in from here
+ * already: once a layout is on its way, a page's own sending comes too late to be the answer's status.
+ */
 export async function requireVisibleVessel(vesselId: string): Promise<void> {
   const { vessel, signedIn } = await visibleVessel(vesselId)
-  if (signedIn && vessel === null) notFound()
+  if (!signedIn) await requireViewer((await headers()).get('x-path') ?? '/')
+  if (vessel === null) notFound()
 }
 
 /** The boat's name for the window's title; the plain word where there is nothing to see. */
