@@ -1,4 +1,5 @@
 import { asIngest } from '@/db/roles'
+import { countGuess } from '@/lib/auth/throttle'
 import { actOnLink, messageOfLink } from '@/lib/messages/links'
 import type { ActWord } from '@/lib/messages/reply-words'
 import { Problem } from '@/lib/problem'
@@ -6,10 +7,20 @@ import { Problem } from '@/lib/problem'
 const RUN_OUT = 'This link has run out, or is not one of ours. Sign in to see your boats.'
 const textOf = (date: Date | null): string | null => date?.toISOString() ?? null
 
-/** What the message behind a link tells; holding it is the right to read it. @throws Problem not-found */
-export async function readLink(code: string, now: Date) {
+/** Codes are short enough to be typed, so trying them is counted. */
+async function refuseLink(from: string): Promise<never> {
+  await countGuess('link', from)
+  throw new Problem('not-found', RUN_OUT)
+}
+
+/**
+ * What the message behind a link tells; holding it is the right to read it.
+ * @param from the address of who asks.
+ * @throws Problem `not-found`, `too-many-requests`
+ */
+export async function readLink(code: string, from: string, now: Date) {
   const message = await asIngest((trx) => messageOfLink(trx, code, now))
-  if (message === null) throw new Problem('not-found', RUN_OUT)
+  if (message === null) return refuseLink(from)
   return {
     notices: message.notices.map((notice) => ({
       kind: notice.kind,
@@ -26,14 +37,15 @@ export async function readLink(code: string, now: Date) {
   }
 }
 
-/** Does what the holder of a link asks for. @throws Problem not-found */
+/** Does what the holder of a link asks for. @throws Problem `not-found`, `too-many-requests` */
 export async function followLink(
   code: string,
   act: { word: ActWord; systemId?: string | undefined },
+  from: string,
   now: Date,
 ) {
   const only = act.systemId === undefined ? undefined : { systemId: act.systemId }
   const outcome = await asIngest((trx) => actOnLink(trx, code, act.word, now, only))
-  if (outcome === null) throw new Problem('not-found', RUN_OUT)
+  if (outcome === null) return refuseLink(from)
   return outcome
 }
