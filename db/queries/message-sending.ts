@@ -92,6 +92,11 @@ export async function setAccepted(trx: Trx, id: string, at: Date, serviceId: str
     .update({ accepted_at: at, failed_at: null, failure: null, service_id: serviceId })
 }
 
+/** Empties what was written in a message; that it was sent, to whom and about what stays. */
+export async function forgetBody(trx: Trx, id: string): Promise<void> {
+  await trx('message').where({ id }).update({ body_text: '', body_html: null })
+}
+
 export async function setDelivered(trx: Trx, id: string, at: Date): Promise<void> {
   await trx('message').where({ id }).whereNull('delivered_at').update({ delivered_at: at })
 }

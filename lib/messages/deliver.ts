@@ -1,5 +1,6 @@
 import { asIngest, type Trx } from '@/db/roles'
 import {
+  forgetBody,
   lockMessage,
   messageExists,
   noteAttempt,
@@ -89,14 +90,24 @@ async function sendNow(
     const serviceId = await handOver(message, services)
     await setAccepted(trx, message.id, now, serviceId)
     await noteAttempt(trx, message.id, now, 'accepted', serviceId)
+    await forgetSecrets(trx, message)
     return 'accepted'
   } catch (error) {
     if (!(error instanceof SendError) || !error.lasting) throw error
     if (error.stopped) await stopAddress(trx, 'sms', message.address, now)
     await setFailed(trx, message.id, now, error.message)
     await noteAttempt(trx, message.id, now, 'refused', error.message)
+    await forgetSecrets(trx, message)
     return 'refused-for-good'
   }
+}
+
+/**
+ * Mails of the account carry one-time links and codes, of which the database keeps hashes alone: once sent, or given
+ * up, their text goes. The demo's and the tests' outbox reads it, and has no mailbox beside it.
+ */
+async function forgetSecrets(trx: Trx, message: OutgoingMessage): Promise<void> {
+  if (message.purpose === 'account' && env().mode === 'production') await forgetBody(trx, message.id)
 }
 
 function handOver(message: OutgoingMessage, services: Services): Promise<string> {
