@@ -8,6 +8,20 @@ const STATEMENTS: Record<string, string> = {
 }
 
 const text = (value: unknown): string | null => (typeof value === 'string' && value !== '' ? value : null)
+/** What was changed, where its name in the data is no word. */
+const FIELDS: Record<string, string> = {
+  timeZone: 'time zone',
+  quietHours: 'quiet hours',
+  altitudeM: 'altitude',
+  toldKinds: 'what it is told',
+  onCallId: 'who is on call',
+}
+const changed = (detail: Record<string, unknown>): string =>
+  words(
+    Object.keys(detail)
+      .map((field) => FIELDS[field] ?? field)
+      .sort(),
+  )
 const words = (value: unknown): string =>
   Array.isArray(value) && value.length > 0 ? value.map(String).join(', ') : 'none'
 
@@ -39,13 +53,13 @@ export function auditWords(row: Pick<LogRow, 'action' | 'detail' | 'shopName'>):
     case 'shop.opened':
       return `opened the shop ${text(detail.name) ?? ''}`.trim()
     case 'shop.changed':
-      return `changed the shop: ${words(Object.keys(detail))}`
+      return `changed the shop: ${changed(detail)}`
     case 'shop.closed':
       return 'closed the shop'
     case 'vessel.created':
       return 'set the boat up'
     case 'vessel.changed':
-      return `changed the boat: ${words(Object.keys(detail))}`
+      return `changed the boat: ${changed(detail)}`
     case 'vessel.aboard':
       return 'said whether anybody is aboard'
     case 'vessel.erased':
