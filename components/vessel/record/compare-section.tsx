@@ -1,5 +1,6 @@
 'use client'
 
+import { useSearchParams } from 'next/navigation'
 import { useState } from 'react'
 import { useNow } from '@/components/data/use-now'
 import { dayAndClock } from '@/components/time'
@@ -31,7 +32,8 @@ export function CompareSection({
 }) {
   const now = useNow(60_000)
   const [range] = useRange(now)
-  const [asked, setAsked] = useState<Asked>({ before: NOTHING, after: NOTHING, visitId: null })
+  const linked = useSearchParams().get('visit')
+  const [asked, setAsked] = useState<Asked>({ before: NOTHING, after: NOTHING, visitId: linked })
   const offset = vessel.utcOffsetSeconds
   const came = comparableVisits(visits, system.id).slice(0, MOST_VISITS)
   const path = comparisonPath(system.id, asked, offset)

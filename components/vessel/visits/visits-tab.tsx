@@ -1,5 +1,7 @@
 'use client'
 
+import Link from 'next/link'
+import { withQuery } from '@/components/data/request'
 import { useApi } from '@/components/data/use-api'
 import { useNow } from '@/components/data/use-now'
 import { dayAndClock } from '@/components/time'
@@ -54,6 +56,14 @@ export function VisitsTab({ id }: { id: string }) {
                     {visit.summary}
                     {visit.verdict ? (
                       <span className="datum block">{VERDICT_WORDS[visit.verdict]}</span>
+                    ) : null}
+                    {visit.startedAt ? (
+                      <Link
+                        className="no-print block"
+                        href={`${withQuery(`/vessels/${id}/record`, { system: visit.systemId ?? undefined, visit: visit.id })}#compare-title`}
+                      >
+                        Before and after
+                      </Link>
                     ) : null}
                   </td>
                 </tr>
