@@ -19,14 +19,22 @@ const BECAUSE: Record<NonNullable<Comparison['because']>, string> = {
 
 const factor = (value: number): string => Number(value.toPrecision(2)).toString()
 
-/** How long it holds after against before: "holds 3.2 times as long as before (2.8 to 3.7)". */
-function ratioWords(ratio: NonNullable<Comparison['ratio']>): string {
-  const { value, low, high } = ratio
-  if (high === null)
-    return low === null
-      ? `holds about ${factor(value)} times as long as before, how far either way is not known`
-      : `holds at least ${factor(low)} times as long as before`
-  return `holds ${factor(value)} times as long as before (${low === null ? 'up' : factor(low)} to ${factor(high)})`
+const chanceWords = (pValue: number | null): string[] =>
+  pValue === null ? [] : [pValue < 0.001 ? 'p under 0.001' : `p ${Number(pValue.toPrecision(2))}`]
+
+/** How long it holds after against before: "holds 3.2 times as long as before (2.8 to 3.7, p under 0.001)". */
+function ratioWords({ value, low, high }: NonNullable<Comparison['ratio']>, pValue: number | null): string {
+  if (high === null && low !== null) {
+    const [chance] = chanceWords(pValue)
+    return `holds at least ${factor(low)} times as long as before${chance ? ` (${chance})` : ''}`
+  }
+  const interval =
+    low === null
+      ? high === null
+        ? 'interval not known'
+        : `up to ${factor(high)}`
+      : `${factor(low)} to ${factor(high ?? value)}`
+  return `holds ${factor(value)} times as long as before (${[interval, ...chanceWords(pValue)].join(', ')})`
 }
 
 /** The verdict in words, with the ratio of hold times and its interval, and what is still needed. */
@@ -34,13 +42,8 @@ export function compareFinding(comparison: Comparison, isVisit: boolean): string
   const { verdict, ratio, pValue, hoursNeeded, because } = comparison
   const said = (isVisit ? OF_VISIT : OF_SPANS)[verdict]
   const needed = hoursNeeded === null ? '' : ` About ${Math.ceil(hoursNeeded)} more quiet hours are needed.`
-  const chance =
-    ratio === null || pValue === null
-      ? ''
-      : ` (${pValue < 0.001 ? 'p under 0.001' : `p ${Number(pValue.toPrecision(2))}`})`
   const reason = because === null ? '' : ` ${BECAUSE[because]}`
-  if (ratio === null) return `${said}.${needed}${reason}`
-  return `${said}: it ${ratioWords(ratio)}${chance}.${needed}${reason}`
+  return `${ratio === null ? said : `${said}: it ${ratioWords(ratio, pValue)}`}.${needed}${reason}`
 }
 
 export type CompareRow = { name: string; before: string; after: string }
