@@ -42,11 +42,11 @@ export const HANDLERS: Record<string, Expectation> = {
   'GET /api/systems/{id}/outlook':               '401  404 404  404 404  ok   ok  ok  ok   ok',
   'GET /api/systems/{id}/trend':                 '401  404 404  404 404  ok   ok  ok  ok   ok',
   'GET /api/systems/{id}/comparison':            '401  404 404  404 404  ok   ok  ok  ok   ok',
+  'GET /api/systems/{id}/suspects':              '401  404 404  404 404  ok   ok  403 ok   403',
   // The installer sees the full record while fitting alone.
   'GET /api/systems/{id}/trace':                 '401  404 404  404 404  ok   ok  403 ok   403',
-  'GET /api/systems/{id}/suspects':              '401  404 404  404 404  ok   ok  403 ok   403',
-  'GET /api/outlook-score':                      '401  ok  ok   ok  ok   ok   ok  ok  ok   ok',
   'GET /api/nights':                             '401  ok  ok   ok  ok   ok   ok  ok  ok   ok',
+  'GET /api/outlook-score':                      '401  ok  ok   ok  ok   ok   ok  ok  ok   ok',
 
   // Loggers
   'GET /api/loggers':                            '401  ok  ok   ok  ok   ok   ok  ok  ok   ok',
@@ -60,6 +60,7 @@ export const HANDLERS: Record<string, Expectation> = {
   'POST /api/loggers/{id}/calibrations':         '401  404 404  404 404  ok   ok  ok  ok   ok',
   'POST /api/loggers/{id}/watch':                '401  404 404  404 404  ok   ok  403 ok   403',
   'GET /api/loggers/{id}/commissioning':         '401  404 404  404 404  ok   ok  ok  ok   ok',
+  'GET /api/loggers/{id}/commissioning/pdf':     '401  404 404  404 404  ok   ok  ok  ok   ok',
   // Whoever holds the code stands before the logger (RFC 8628); what it is granted for is checked.
   'GET /api/claims/{userCode}':                  '401  ok  ok   ok  ok   ok   ok  ok  ok   ok',
   'POST /api/claims/{userCode}':                 '401  404 404  404 404  ok   403 ok  ok   ok',
@@ -82,6 +83,9 @@ export const HANDLERS: Record<string, Expectation> = {
   'POST /api/notices/{id}/acknowledge':          '401  404 404  404 404  ok   ok  403 ok   ok',
   'GET /api/messages':                           '401  403 ok   403 ok   403  403 403 ok   ok',
   'POST /api/messages/{id}/resend':              '401  403 404  403 404  403  403 403 ok   ok',
+  // The code in a message is its receiver's right for as long as it lasts.
+  'GET /api/links/{code}':                       'ok   ok  ok   ok  ok   ok   ok  ok  ok   ok',
+  'POST /api/links/{code}':                      'ok   ok  ok   ok  ok   ok   ok  ok  ok   ok',
   // Demo and test only; without a sign-in on purpose.
   'GET /api/outbox':                             'ok   ok  ok   ok  ok   ok   ok  ok  ok   ok',
 

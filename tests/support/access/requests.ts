@@ -106,6 +106,9 @@ export const REQUESTS: Record<string, Ask> = {
   }),
   'POST /api/loggers/{id}/watch': send((world) => `/api/loggers/${world.loggerId}/watch`),
   'GET /api/loggers/{id}/commissioning': get((world) => `/api/loggers/${world.loggerId}/commissioning`),
+  'GET /api/loggers/{id}/commissioning/pdf': get(
+    (world) => `/api/loggers/${world.loggerId}/commissioning/pdf`,
+  ),
   'GET /api/claims/{userCode}': get((world) => `/api/claims/${world.userCode}`),
   'POST /api/claims/{userCode}': (world) => ({
     path: `/api/claims/${world.userCode}`,
@@ -133,6 +136,8 @@ export const REQUESTS: Record<string, Ask> = {
   }),
   'GET /api/messages': own('/api/messages'),
   'POST /api/messages/{id}/resend': send((world) => `/api/messages/${world.messageId}/resend`),
+  'GET /api/links/{code}': get((world) => `/api/links/${world.linkCode}`),
+  'POST /api/links/{code}': send((world) => `/api/links/${world.linkCode}`, { word: 'OK' }),
   'GET /api/outbox': own('/api/outbox'),
 
   'GET /api/visits': own('/api/visits'),

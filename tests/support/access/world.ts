@@ -284,7 +284,7 @@ async function build(trx: Knex.Transaction): Promise<World> {
     transition: 'opened',
     reason: marker,
   })
-  const linkCode = randomBytes(9).toString('base64url')
+  const linkCode = randomBytes(10).toString('hex')
   const messageId = await add('message', {
     person_id: people.owner.id,
     channel: 'email',
