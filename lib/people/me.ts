@@ -1,9 +1,12 @@
+import { noteAudit } from '@/db/queries/audit'
 import { changePerson, readCredentialsById, readOwnPlaces, setPasswordHash } from '@/db/queries/people'
 import { endOtherSessions } from '@/db/queries/sessions'
 import { listAllShops } from '@/db/queries/vessels'
 import { asIngest, asPerson } from '@/db/roles'
 import { hashPassword, passwordMatches } from '@/lib/auth/passwords'
+import { countCode } from '@/lib/auth/throttle'
 import { unitsOf, type Who } from '@/lib/auth/who'
+import { queueMail } from '@/lib/messages/queue-mail'
 import { Problem } from '@/lib/problem'
 import { roleSchema, type Me, type Shop, type Units } from '@/shared/schemas'
 
@@ -32,12 +35,17 @@ export async function changeMe(
   return getMe({ ...who, name: change.name ?? who.name, units: units ?? who.units })
 }
 
-/** @throws Problem `invalid` when the current password isn't right */
+/**
+ * Sets a new password: every other session ends, and the mailbox is told.
+ * @throws Problem `invalid` when the current password isn't right, `too-many-requests` after too many tries
+ */
 export async function changePassword(
   who: Who,
   change: { current: string; next: string },
   now: Date,
 ): Promise<{ done: true }> {
+  // A session left open in other hands must not serve for finding the password out.
+  await countCode(`password ${who.personId}`)
   const known = await asIngest((trx) => readCredentialsById(trx, who.personId))
   if (!(await passwordMatches(known?.passwordHash ?? null, change.current)))
     throw new Problem('invalid', 'The current password is not right.', {
@@ -47,6 +55,17 @@ export async function changePassword(
   await asIngest(async (trx) => {
     await setPasswordHash(trx, who.personId, passwordHash)
     await endOtherSessions(trx, who.personId, who.sessionId, now)
+    await noteAudit(trx, { at: now, personId: who.personId, action: 'account.password' })
+    const mail = {
+      personId: who.personId,
+      to: who.email,
+      subject: 'Your password was changed',
+      paragraphs: [
+        'A new password was chosen under Account, and every other device was signed out. If that was not you, have a new password sent from the sign-in page at once.',
+      ],
+      purpose: 'account' as const,
+    }
+    await queueMail(trx, mail, now)
   })
   return { done: true }
 }
