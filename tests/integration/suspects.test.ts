@@ -1,7 +1,9 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { getComparison } from '@/lib/reading/get-comparison'
 import { getOutlookScore } from '@/lib/reading/get-outlook-score'
 import { getSuspects } from '@/lib/reading/get-suspects'
-import { outlookScoreSchema, suspectsSchema } from '@/shared/schemas'
+import { listRuns } from '@/lib/reading/list-runs'
+import { comparisonSchema, outlookScoreSchema, suspectsSchema } from '@/shared/schemas'
 import { defaultBoat, flowForBoatHold, type BoatOverrides } from '@/simulator/boat'
 import { testDatabase, useDatabase, type TestDatabase } from '../support/database'
 import { joinShop, live, makeBoat, makePerson, makeShop, type Boat } from '../support/owned-boats'
@@ -86,7 +88,14 @@ describe('suspects', () => {
     const changedAt = new Date(AT.getTime() - 5 * 3_600_000)
     const [visit] = await database
       .knex('visit')
-      .insert({ vessel_id: boat.vesselId, shop_id: shopId, status: 'under-way', started_at: changedAt })
+      .insert({
+        vessel_id: boat.vesselId,
+        shop_id: shopId,
+        status: 'closed',
+        started_at: changedAt,
+        finished_at: changedAt,
+        closed_at: changedAt,
+      })
       .returning<{ id: string }[]>('id')
     await database.knex('part_change').insert({
       id: '6f1f8f6e-5a4b-4a37-9a67-0f6f5a3f7c11',
@@ -98,6 +107,44 @@ describe('suspects', () => {
     expect(await suspects()).toMatchObject({ from: changedAt.toISOString(), verdict: 'not-enough' })
     const before = await suspects(new Date(changedAt.getTime() - 60_000))
     expect(before.suspects[0]?.family).toBe('check-valve')
+  })
+})
+
+describe('what stands beside the suspects', () => {
+  it('compares r, R, D and K of any two spans', async () => {
+    const span = (first: number, last: number) => ({
+      from: new Date(FROM + first * DAY_MS).toISOString(),
+      to: new Date(FROM + last * DAY_MS).toISOString(),
+    })
+    const query = { before: span(0, 4), after: span(4, 8) }
+    const found = comparisonSchema.parse(await getComparison(technician, boat.systemId, query, AT))
+    for (const side of [found.before, found.after]) {
+      const rate = (side.leakRatePaPerHour ?? 0) / 3600
+      const recharge = side.rechargePaPerSecond ?? 0
+      expect(side.flowRatio).toBeCloseTo(rate / (recharge + rate), 10)
+      // 10 to 8 inHg; after a stop the gas warms and the vacuum settles a little lower.
+      expect(side.differentialPa).toBeGreaterThan(6_000)
+      expect(side.differentialPa).toBeLessThan(6_900)
+    }
+    // The valve seats at random about the same middle: nothing else than that moved.
+    expect(found.because).toBeNull()
+    expect(['no-change', 'too-early']).toContain(found.verdict)
+  })
+
+  it('tells each run’s recharge, and its supply only to those who see the full record', async () => {
+    const runs = async (person: string) => {
+      const { items } = await listRuns(person, boat.systemId, { limit: 5000 }, AT)
+      return items.filter((run) => run.trigger === 'leak' && run.stoppedAt !== null)
+    }
+    const [whole, figures] = [await runs(boat.ownerId), await runs(technician)]
+    expect(figures.length).toBeGreaterThan(20)
+    expect(figures.every((run) => run.supplyV === null)).toBe(true)
+    expect(whole.filter((run) => (run.supplyV ?? 0) > 11 && (run.supplyV ?? 0) < 14).length).toBeGreaterThan(
+      20,
+    )
+    expect(figures.map((run) => run.rechargePaPerSecond)).toEqual(
+      whole.slice(0, figures.length).map((run) => run.rechargePaPerSecond),
+    )
   })
 })
 
