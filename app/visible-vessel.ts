@@ -4,17 +4,18 @@ import { cache } from 'react'
 import { requireViewer, whoViews } from '@/lib/auth/page'
 import { Problem } from '@/lib/problem'
 import { getVessel } from '@/lib/vessels/get-vessel'
-import type { Vessel } from '@/shared/schemas'
+import { idSchema, type Vessel } from '@/shared/schemas'
 
 /** The vessel as this reader may see it, once a request; null when nobody is signed in or there is none to see. */
 const visibleVessel = cache(
   async (vesselId: string): Promise<{ vessel: Vessel | null; signedIn: boolean }> => {
     const who = await whoViews()
     if (who === null) return { vessel: null, signedIn: false }
+    // An id that could never be one is as absent as a boat of somebody else.
+    if (!idSchema.safeParse(vesselId).success) return { vessel: null, signedIn: true }
     try {
       return { vessel: await getVessel(who.personId, vesselId, new Date()), signedIn: true }
     } catch (error) {
-      // An id that could never be one is as absent as a boat of somebody else.
       if (error instanceof Problem && error.status >= 400 && error.status < 500)
         return { vessel: null, signedIn: true }
       throw error
