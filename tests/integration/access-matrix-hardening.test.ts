@@ -71,6 +71,17 @@ describe('pages', () => {
       expect(again.headers.get('content-security-policy')).not.toContain(nonce)
     })
 
+  it('of ids that could never be any answer as of nothing at all', async () => {
+    for (const [address, where] of Object.entries(PAGE_PATHS)) {
+      if (!/\{(?:id)\}/.test(address)) continue
+      for (const id of ['x', '1.js', '0', '-1', '99999999999999999999', '4294967296', "1'--", '%00']) {
+        const path = where(world).replace(/\/\d+/, `/${id}`)
+        const { status } = await ask('GET', { path }, cookieOf(world, 'owner'))
+        expect([path, status >= 400 && status < 500]).toEqual([path, true])
+      }
+    }
+  })
+
   it('are not the only thing that is served with its kind made plain', async () => {
     for (const file of ['/sw.js', '/mark.svg', '/manifest.webmanifest']) {
       const { status, headers } = await ask('GET', { path: file }, '')
@@ -323,6 +334,32 @@ describe('whether an address has an account', () => {
       expect(answers[0], where).toEqual(answers[1])
       expect(answers[0]?.status, where).toBe(410)
     }
+  })
+})
+
+describe('guessing', () => {
+  it('at one’s own password, by a session in other hands, comes to an end', async () => {
+    const other = await makeWorld(database)
+    const statuses: number[] = []
+    for (let count = 0; count < 12; count += 1) {
+      const body = { current: `guess ${count}`, next: 'a better watchword' }
+      statuses.push(
+        (await ask('PUT', { path: '/api/me/password', body }, cookieOf(other, 'technician'))).status,
+      )
+    }
+    expect(statuses[0]).toBe(422)
+    expect(statuses[11]).toBe(429)
+  })
+
+  it('at links in messages comes to an end, for one address alone', async () => {
+    const from = (address: string) =>
+      ask('GET', { path: '/api/links/abcdefghjk', headers: { 'x-forwarded-for': address } }, '')
+    const tried = []
+    for (let count = 0; count < 31; count += 1) tried.push((await from('203.0.113.201')).status)
+    expect(tried[0]).toBe(404)
+    expect(tried[30]).toBe(429)
+    expect((await from('203.0.113.202')).status).toBe(404)
+    expect((await ask('GET', { path: `/api/links/${world.linkCode}` }, '')).status).toBe(200)
   })
 })
 
