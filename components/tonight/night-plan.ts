@@ -1,4 +1,5 @@
 import { STRIP_MINUTES } from '@/components/charts/scales'
+import { quarterAfter } from '@/shared/quarter'
 import type { Night, Outlook, Summary } from '@/shared/schemas'
 
 /** A run is likely from this chance on; the same figure from which a warning is sent unless set otherwise. */
@@ -13,6 +14,13 @@ export const runsToSay = (outlook: Outlook): number => Math.max(1, Math.round(ou
 export function firstRunInstant(outlook: Outlook): string | null {
   const first = outlook.firstRun
   return first === null ? null : (first.at ?? first.latest ?? first.earliest)
+}
+
+/** The same, to be said: while people are up no minute can be named, so it is the quarter of an hour after the span. */
+export function firstRunToSay(outlook: Outlook): string | null {
+  const instant = firstRunInstant(outlook)
+  if (instant === null || outlook.firstRun?.at !== null) return instant
+  return new Date(quarterAfter(Date.parse(instant))).toISOString()
 }
 
 /** Minutes after 18:00 of the boat's clock, counted from the night's own start so that no zone is asked. */

@@ -1,5 +1,5 @@
 import { clock, dayAndClock, offsetAt, type ZoneOffset } from '@/components/time'
-import { firstRunInstant, LIKELY, runsToSay, SURELY_QUIET } from '@/components/tonight/night-plan'
+import { firstRunToSay, LIKELY, runsToSay, SURELY_QUIET } from '@/components/tonight/night-plan'
 import { times, type Phrase } from '@/components/tonight/phrases'
 import type { Outlook, Summary } from '@/shared/schemas'
 import { formatDuration } from '@/shared/units'
@@ -50,7 +50,7 @@ export function tonightKind({ summary, outlook }: TonightFacts): TonightKind {
 }
 
 function likely(facts: TonightFacts, outlook: Outlook): Phrase[] {
-  const first = firstRunInstant(outlook)
+  const first = firstRunToSay(outlook)
   const count = runsToSay(outlook)
   const phrases: Phrase[] = [
     { text: `${facts.name}’s pump is likely to run ` },

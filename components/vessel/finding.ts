@@ -1,6 +1,6 @@
 import { clock, dayAndClock, offsetAt, type ZoneOffset } from '@/components/time'
 import { durationAndInterval } from '@/components/figures'
-import { firstRunInstant, LIKELY, runsToSay } from '@/components/tonight/night-plan'
+import { firstRunToSay, LIKELY, runsToSay } from '@/components/tonight/night-plan'
 import { times, type Phrase } from '@/components/tonight/phrases'
 import { STATE_WORDS } from '@/components/states'
 import type { Cause, Outlook, Step, Summary } from '@/shared/schemas'
@@ -30,7 +30,7 @@ function tonight(outlook: Outlook | null, offsets: readonly ZoneOffset[]): Phras
             : '; should be quiet tonight',
       },
     ]
-  const first = firstRunInstant(outlook)
+  const first = firstRunToSay(outlook)
   const at = first === null ? '' : clock(first, offsetAt(offsets, Date.parse(first)))
   return [
     { text: ', and would run about ' },

@@ -2,6 +2,7 @@ import type { Trx } from '@/db/roles'
 import { localClocks } from '@/db/queries/outlooks'
 import type { Outlook } from '@/lib/analysis/outlook/types'
 import type { NightEvidence } from '@/lib/messages/evidence'
+import { quarterAfter } from '@/shared/quarter'
 
 const STRIP_START_MINUTE = 18 * 60
 const DAY_MINUTES = 24 * 60
@@ -11,8 +12,9 @@ const MOST_TICKS = 48
 export async function nightEvidence(trx: Trx, timeZone: string, outlook: Outlook): Promise<NightEvidence> {
   const { night, firstRun } = outlook
   const expected = expectedRuns(outlook)
-  const instants = [night.from, night.to, night.bedtime, outlook.heardAt, firstRun?.at, ...expected]
-  const [from = '', to = '', bedtime = '', heard = '', first = '', ...runs] = await localClocks(
+  const by = expected[0] === undefined ? null : quarterAfter(expected[0])
+  const instants = [night.from, night.to, night.bedtime, outlook.heardAt, firstRun?.at, by, ...expected]
+  const [from = '', to = '', bedtime = '', heard = '', first = '', firstBy = '', ...runs] = await localClocks(
     trx,
     timeZone,
     instants.map((instant) => new Date(instant ?? night.from)),
@@ -24,7 +26,7 @@ export async function nightEvidence(trx: Trx, timeZone: string, outlook: Outlook
       to,
       bedtime,
       firstAt: firstRun === null || firstRun.at === null || firstRun.at > night.to ? null : first,
-      firstAfterBedtime: runs[0] ?? null,
+      firstAfterBedtime: by === null ? null : firstBy,
     },
     chance: outlook.chance,
     chanceIfFlushedLast: outlook.chanceIfFlushedLast ?? 0,

@@ -183,7 +183,7 @@ describe('what is drawn on the record', () => {
 describe('the finding of a vessel', () => {
   it('says state, hold time with interval, and tonight', () => {
     expect(plain(vesselFinding(summary(), outlook(), OFFSETS, NOW))).toBe(
-      'Leaking. Holds 1.4 h (1.3 to 1.6 h), and would run about 6 times tonight, first by about 23:55.',
+      'Leaking. Holds 1.4 h (1.3 to 1.6 h), and would run about 6 times tonight, first by about 00:00.',
     )
   })
   it('says since when a silent boat is silent', () => {

@@ -60,7 +60,7 @@ const SAID: Record<TonightKind, { facts: TonightFacts; words: string }> = {
   },
   likely: {
     facts: facts(),
-    words: 'Saltmarsh Hare’s pump is likely to run 6 times tonight, first by about 23:55.',
+    words: 'Saltmarsh Hare’s pump is likely to run 6 times tonight, first by about 00:00.',
   },
   'flush-last': {
     facts: facts({
