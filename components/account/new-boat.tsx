@@ -1,9 +1,8 @@
 'use client'
 
 import { useRouter } from 'next/navigation'
+import { loadWhole } from '@/components/joining/load-whole'
 import { NewBoatForm } from '@/components/register/new-boat-form'
-
-const HOME = '/tonight'
 
 /** A boat of one's own, with or without a shop; afterwards her logger is registered. */
 export function NewBoat() {
@@ -11,8 +10,7 @@ export function NewBoat() {
   return (
     <NewBoatForm
       made={async () => {
-        // Loaded whole: the navigation of an owner is drawn by the server.
-        window.location.assign(HOME)
+        loadWhole('/tonight')
       }}
       cancel={() => router.back()}
       cancelWord="Back"

@@ -2,10 +2,9 @@
 
 import { send } from '@/components/data/request'
 import { EntryForm } from '@/components/joining/entry-form'
+import { loadWhole } from '@/components/joining/load-whole'
 import { Field } from '@/components/ui/field'
 import { openShopSchema } from '@/shared/schemas'
-
-const NEXT = '/people'
 
 /** Brings a shop of one's own; whoever does is its first manager. */
 export function StartShop() {
@@ -15,7 +14,7 @@ export function StartShop() {
       defaults={{ name: '', harbour: '', timeZone: Intl.DateTimeFormat().resolvedOptions().timeZone }}
       submit={async (values) => {
         await send('POST', '/api/me/shops', values)
-        window.location.assign(NEXT)
+        loadWhole('/people')
       }}
       word="Start the shop"
       busyWord="Starting …"

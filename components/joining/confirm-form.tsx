@@ -4,6 +4,7 @@ import Link from 'next/link'
 import { useState } from 'react'
 import { z } from 'zod'
 import { ApiProblem, send } from '@/components/data/request'
+import { loadWhole } from '@/components/joining/load-whole'
 import { EntryForm } from '@/components/joining/entry-form'
 import { trySignIn } from '@/components/sign-in/sign-in-form'
 import { Button } from '@/components/ui/button'
@@ -39,7 +40,7 @@ function NewAccount({ token, confirmation }: { token: string; confirmation: Conf
         submit={async ({ password }) => {
           await send('POST', '/api/confirm-email', { token, password })
           await trySignIn({ email, password })
-          window.location.assign(shopName === null ? '/tonight' : '/people')
+          loadWhole(shopName === null ? '/tonight' : '/people')
         }}
         word="Confirm and begin"
         busyWord="Making the account …"

@@ -4,6 +4,7 @@ import { signOut } from 'next-auth/react'
 import { z } from 'zod'
 import { send } from '@/components/data/request'
 import { Choice } from '@/components/joining/choice'
+import { loadWhole } from '@/components/joining/load-whole'
 import { EntryForm } from '@/components/joining/entry-form'
 import { trySignIn } from '@/components/sign-in/sign-in-form'
 import { Button, LinkButton } from '@/components/ui/button'
@@ -64,8 +65,7 @@ export function InvitationForm({ token, invitation, signedInAs }: Props) {
   )
 }
 
-const goOn = (invitation: InvitationTo) =>
-  window.location.assign(invitation.vesselName === null ? '/fleet' : '/tonight')
+const goOn = (invitation: InvitationTo) => loadWhole(invitation.vesselName === null ? '/fleet' : '/tonight')
 
 function KnownPerson({ token, invitation }: Omit<Props, 'signedInAs'>) {
   return (

@@ -3,7 +3,7 @@
 import { useState } from 'react'
 import { ApiProblem, send } from '@/components/data/request'
 import { useNow } from '@/components/data/use-now'
-import { ago, until } from '@/components/time'
+import { ago, span } from '@/components/time'
 import { Button } from '@/components/ui/button'
 import { Trouble } from '@/components/ui/sheet-states'
 import type { Invitation } from '@/shared/schemas'
@@ -48,9 +48,7 @@ export function WaitingInvitations({
                 <span className="datum block">
                   Sent {ago(item.createdAt, now)}
                   {item.invitedBy ? ` by ${item.invitedBy}` : ''},{' '}
-                  {expired
-                    ? 'has run out'
-                    : `good until ${until(item.expiresAt, now).replace(/^in /, '')} from now`}
+                  {expired ? 'has run out' : `good for ${span((Date.parse(item.expiresAt) - now) / 1000)}`}
                 </span>
               </span>
               <span className="flex gap-4">

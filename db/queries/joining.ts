@@ -186,3 +186,12 @@ export async function updateShop(
   }).filter(([, value]) => value !== undefined)
   if (columns.length > 0) await trx('shop').where({ id: shopId }).update(Object.fromEntries(columns))
 }
+
+/** Blanks mails and texts of accounts that left before an instant: their one-time secrets are with the receiver now. */
+export async function forgetAccountBodies(trx: Trx, sentBefore: Date): Promise<number> {
+  return trx('message')
+    .where({ purpose: 'account' })
+    .where('accepted_at', '<', sentBefore)
+    .whereNot({ body_text: '' })
+    .update({ body_text: '', body_html: null })
+}

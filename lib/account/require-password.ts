@@ -1,7 +1,7 @@
 import { readCredentialsById } from '@/db/queries/people'
 import { asIngest } from '@/db/roles'
 import { passwordMatches } from '@/lib/auth/passwords'
-import { countCode } from '@/lib/auth/throttle'
+import { countCode, forgiveCode } from '@/lib/auth/throttle'
 import type { Who } from '@/lib/auth/who'
 import { Problem } from '@/lib/problem'
 
@@ -9,7 +9,8 @@ import { Problem } from '@/lib/problem'
 export async function requirePassword(who: Who, password: string): Promise<void> {
   await countCode(`password ${who.personId}`)
   const known = await asIngest((trx) => readCredentialsById(trx, who.personId))
-  if (await passwordMatches(known?.passwordHash ?? null, password)) return
+  if (await passwordMatches(known?.passwordHash ?? null, password))
+    return forgiveCode(`password ${who.personId}`)
   throw new Problem('invalid', 'The password is not right.', {
     extensions: { errors: [{ path: 'password', message: 'is not right' }] },
   })

@@ -2,6 +2,7 @@ import { toString as qrCode } from 'qrcode'
 import {
   countRecoveryCodes,
   lockFactor,
+  noteFactorStep,
   setFactor,
   setPendingFactor,
   setRecoveryCodes,
@@ -9,7 +10,7 @@ import {
 import { noteAudit } from '@/db/queries/audit'
 import { endOtherSessions } from '@/db/queries/sessions'
 import { asIngest } from '@/db/roles'
-import { countCode } from '@/lib/auth/throttle'
+import { countCode, forgiveCode } from '@/lib/auth/throttle'
 import type { Who } from '@/lib/auth/who'
 import { queueMail } from '@/lib/messages/queue-mail'
 import { Problem } from '@/lib/problem'
@@ -64,8 +65,10 @@ export async function confirmSecondFactor(
     const secret = sealedPending === null ? null : unseal(sealedPending)
     if (sealedPending === null || secret === null)
       throw new Problem('conflict', 'Begin again: there is no secret waiting for its first code.')
-    if (stepOf(secret, code, now) === null) throw wrongCode()
+    const step = stepOf(secret, code, now)
+    if (step === null) throw wrongCode()
     await setFactor(trx, who.personId, sealedPending, now)
+    await noteFactorStep(trx, who.personId, step)
     const { codes, hashes } = newRecoveryCodes()
     await setRecoveryCodes(trx, who.personId, hashes, now)
     await endOtherSessions(trx, who.personId, who.sessionId, now)
@@ -123,10 +126,12 @@ async function withCode<Result>(
 ): Promise<Result> {
   await requirePassword(who, input.password)
   await countCode(who.personId)
-  return asIngest(async (trx) => {
+  const result = await asIngest(async (trx) => {
     const { onSince } = await lockFactor(trx, who.personId)
     if (onSince === null) throw new Problem('conflict', 'The second factor is not on.')
     if (!(await takeCode(trx, who.personId, input.code, now))) throw wrongCode()
     return work(trx)
   })
+  await forgiveCode(who.personId)
+  return result
 }

@@ -3,7 +3,7 @@ import { endSession, openSession } from '@/db/queries/sessions'
 import { asIngest } from '@/db/roles'
 import { takeCode } from '@/lib/account/codes'
 import { passwordMatches } from './passwords'
-import { countCode, forgiveTry } from './throttle'
+import { countCode, forgiveCode, forgiveTry } from './throttle'
 
 export const SESSION_SECONDS = 30 * 86_400
 
@@ -54,7 +54,9 @@ async function codeWanted(known: Credentials, code: string, at: Date): Promise<C
   if (code.trim() === '') return 'SecondFactor'
   // A known password makes six digits worth guessing: their tries are counted apart.
   await countCode(known.personId)
-  return (await asIngest((trx) => takeCode(trx, known.personId, code, at))) ? null : 'SecondFactorWrong'
+  if (!(await asIngest((trx) => takeCode(trx, known.personId, code, at)))) return 'SecondFactorWrong'
+  await forgiveCode(known.personId)
+  return null
 }
 
 export async function signOut(sessionId: string, at: Date): Promise<void> {

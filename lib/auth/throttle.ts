@@ -104,6 +104,11 @@ export async function countCode(personId: string): Promise<void> {
   if (wait > 0) throw tooMany(wait)
 }
 
+/** A right code gives its try back. */
+export const forgiveCode = async (personId: string): Promise<void> => {
+  await codes.reward(personId)
+}
+
 export const tooMany = (waitSeconds: number): Problem =>
   new Problem('too-many-requests', `Too many tries. Try again in ${Math.ceil(waitSeconds / 60)} min.`, {
     headers: { 'retry-after': String(waitSeconds) },

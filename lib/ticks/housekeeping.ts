@@ -1,8 +1,11 @@
 import type { Trx } from '@/db/roles'
+import { forgetAccountBodies } from '@/db/queries/joining'
+import { env } from '@/lib/env'
 import { attachMonths, clearExpired, expireNotices } from '@/db/queries/housekeeping'
 import type { Tick } from '@/lib/ticks/run-tick'
 
-const DAY_MS = 86_400_000
+const HOUR_MS = 3_600_000
+const DAY_MS = 24 * HOUR_MS
 const MONTHS_AHEAD = 3
 /** A step is old news after a while: the leak is simply what it is. */
 const STEP_STANDS_MS = 14 * DAY_MS
@@ -23,5 +26,8 @@ export async function tidy(trx: Trx, now: Date): Promise<Record<string, number>>
   return {
     expired: await expireNotices(trx, 'step', new Date(now.getTime() - STEP_STANDS_MS), now),
     cleared: await clearExpired(trx, new Date(now.getTime() - KEEP_MS)),
+    // The outbox of demo and tests shows what was sent; elsewhere a one-time link has no business in a table.
+    forgotten:
+      env().mode === 'production' ? await forgetAccountBodies(trx, new Date(now.getTime() - HOUR_MS)) : 0,
   }
 }

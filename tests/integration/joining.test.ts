@@ -266,7 +266,7 @@ describe('people of a shop', () => {
     expect(people.body.items).toHaveLength(2)
     expect((await hand.client.get(path)).status).toBe(403)
 
-    const self = `${path}/${idOf(shop.email)}`
+    const self = `/api/shops/${shop.shopId}/people/${idOf(shop.email)}`
     for (const roles of [[], ['technician']]) {
       const refused = await shop.client.send<{ detail: string }>('PUT', self, { roles })
       expect(refused.status).toBe(409)
@@ -303,6 +303,17 @@ describe('people of a shop', () => {
 })
 
 describe('a shop', () => {
+  it('is started by somebody with an account, who then manages it', async () => {
+    const person = await join()
+    const ask = (timeZone: string) =>
+      person.client.send<{ id: string }>('POST', '/api/me/shops', { name: 'Second Holm', timeZone })
+    expect((await ask('Sea/Nowhere')).status).toBe(422)
+    const { id } = await expectStatus(ask('Europe/Lisbon'), 201)
+    expect((await person.client.get<Me>('/api/me')).body.shops).toMatchObject([
+      { id, name: 'Second Holm', roles: ['manager'] },
+    ])
+  })
+
   it('is changed by its managers: name, what it is told, quiet hours, who is on call', async () => {
     const [shop, stranger] = [await newShop(), await join()]
     const path = `/api/shops/${shop.shopId}`
