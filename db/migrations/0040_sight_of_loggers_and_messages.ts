@@ -33,9 +33,10 @@ create or replace function logger_health() returns table (logger_id integer, sup
   where l.id in (select visible_loggers())
 $$;
 
--- Messages a person may read in the log: what was told about boats that a shop they manage sees now; and what its
--- staff were sent that tells of no boat at all. What a colleague is told about a boat of their own is the colleague's.
-create function logged_messages() returns setof bigint language sql stable security definer set search_path = public as $$
+-- Messages a manager reads in the log: what was told about boats that the shop sees now, and what its staff were sent
+-- that tells of no boat at all. What a colleague is told about a boat of their own is the colleague's.
+create or replace function managed_messages() returns setof bigint
+language sql stable security definer set search_path = public as $$
   with managed as (select shop_id from membership
       where person_id = current_person() and role = 'manager' and ended_at is null),
     seen as (select vessel_id from shop_access where withdrawn_at is null and shop_id in (select shop_id from managed)
@@ -47,20 +48,19 @@ create function logged_messages() returns setof bigint language sql stable secur
     and m.person_id in (select person_id from membership
       where ended_at is null and shop_id in (select shop_id from managed))
 $$;
-revoke execute on function logged_messages() from public;
-grant execute on function logged_messages() to mw_person, mw_ingest;
--- Each of the two policies asked the other before, and neither table could be read.
-drop policy see on message;
-create policy see on message for select to mw_person
-  using (purpose <> 'account' and (person_id = current_person() or id = any (array(select logged_messages()))));
 `)
 }
 
 export async function down(knex: Knex): Promise<void> {
   await knex.raw(`
-drop policy see on message;
-create policy see on message for select to mw_person using (purpose <> 'account' and person_id = current_person());
-drop function logged_messages();
+create or replace function managed_messages() returns setof bigint
+language sql stable security definer set search_path = public as $$
+  select x.id from message x where x.person_id in (select m.person_id from membership m
+    where m.ended_at is null and has_role(m.shop_id, array['manager']))
+  union select ms.message_id from message_subject ms join notice_event e on e.id = ms.notice_event_id
+    join notice n on n.id = e.notice_id join shop_access a on a.vessel_id = n.vessel_id and a.withdrawn_at is null
+    where has_role(a.shop_id, array['manager'])
+$$;
 create or replace function logger_health() returns table (logger_id integer, supply_v real, supply_at timestamptz,
   low_supply_v real, silence_seconds integer) language sql stable security definer set search_path = public as $$
   select l.id, h.supply_mean_v, h.hour, g.low_supply_v, g.silence_seconds

@@ -114,14 +114,13 @@ describe('row-level security', () => {
       expect(seen.has(closed), closed).toBe(false)
     expect([...seen.keys()].filter((name) => !name.startsWith('public.'))).toEqual([])
     expect([...seen.keys()].filter((name) => /sample_\d/.test(name))).toEqual([])
-    const columns = await asPerson(world.people.owner.id, async (trx) =>
-      Promise.all(
-        ['person', 'logger', 'invitation', 'session'].map((name) =>
-          readable(trx, { schema: 'public', name }),
-        ),
-      ),
-    )
-    expect(columns.flat().filter((name) => /hash|secret|totp|key$|token/.test(name))).toEqual([])
+    const columns = await asPerson(world.people.owner.id, async (trx) => {
+      const found: string[] = []
+      for (const name of ['person', 'logger', 'invitation', 'session'])
+        found.push(...(await readable(trx, { schema: 'public', name })))
+      return found
+    })
+    expect(columns.filter((name) => /hash|secret|totp|key$|token/.test(name))).toEqual([])
   })
 
   it('shows the owner the boat in every table of it', async () => {
