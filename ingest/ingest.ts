@@ -93,7 +93,7 @@ async function takeUpload(trx: Trx, upload: Upload): Promise<IngestAnswer> {
   const reached = await lockReached(trx, fittings, batch)
   const id = await nextUploadId(trx)
   const stored = await store(trx, logger.id, id, batch)
-  await noteHeard(trx, logger.id, receivedAt, offsetSeconds)
+  await noteHeard(trx, logger.id, heardOf(batch, [ALWAYS], receivedAt) ?? receivedAt, offsetSeconds)
   const answer: IngestAnswer = {
     upload: id,
     samples: {
@@ -130,11 +130,17 @@ async function takeUpload(trx: Trx, upload: Upload): Promise<IngestAnswer> {
   return answer
 }
 
+const ALWAYS = { fromMs: -Infinity, toMs: Infinity }
+
 /**
- * A system is heard of up to its newest reading, not up to the moment when it arrived: a backlog that ends two days
+ * A system, and its logger, is heard of up to its newest reading, not up to the moment when it arrived: a backlog that ends two days
  * ago says nothing of these two days.
  */
-function heardOf(batch: Batch, spans: readonly LoggerFitting[], receivedAt: Date): Date | null {
+function heardOf(
+  batch: Batch,
+  spans: readonly Pick<LoggerFitting, 'fromMs' | 'toMs'>[],
+  receivedAt: Date,
+): Date | null {
   let newestMs = -Infinity
   for (let index = 0; index < batch.count; index += 1) {
     const at = batch.at[index] ?? -Infinity

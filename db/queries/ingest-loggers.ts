@@ -89,16 +89,16 @@ export async function fittingsOfLogger(trx: Trx, loggerId: string): Promise<Logg
   }))
 }
 
-/** The logger was heard at `receivedAt`; its clock stood off by so much (null: it did not say). */
+/** The logger is heard of up to `heardAt`; its clock stood off by so much (null: it did not say). */
 export async function noteHeard(
   trx: Trx,
   loggerId: string,
-  receivedAt: Date,
+  heardAt: Date,
   clockOffsetSeconds: number | null,
 ): Promise<void> {
   await trx.raw(
     `update logger set last_heard_at = greatest(last_heard_at, ?),
        clock_offset_seconds = coalesce(?::float8, clock_offset_seconds) where id = ?`,
-    [receivedAt, clockOffsetSeconds, loggerId],
+    [heardAt, clockOffsetSeconds, loggerId],
   )
 }

@@ -190,10 +190,10 @@ export async function localClocks(trx: Trx, timeZone: string, instants: Date[]):
   return rows.map((row) => row.clock)
 }
 
-/** Wall-clock text with the day, `Tue 14:10`, of instants in a zone. */
+/** Wall-clock text with the day, `Tue 10 Nov, 14:10`, of instants in a zone. */
 export async function localMoments(trx: Trx, timeZone: string, instants: Date[]): Promise<string[]> {
   const { rows } = (await trx.raw(
-    `select to_char(t at time zone ?, 'Dy HH24:MI') as moment from unnest(?::timestamptz[]) with ordinality as u (t, n)
+    `select to_char(t at time zone ?, 'Dy FMDD Mon, HH24:MI') as moment from unnest(?::timestamptz[]) with ordinality as u (t, n)
      order by n`,
     [timeZone, instants],
   )) as { rows: { moment: string }[] }

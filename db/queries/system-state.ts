@@ -118,12 +118,20 @@ export async function allSystemIds(trx: Trx): Promise<string[]> {
   return rows.map((row) => row.id)
 }
 
-/** This system is heard of up to `heardAt`. */
+/**
+ * This system is heard of up to `heardAt`. After a gap or a backlog of more than six hours, how it moves is judged
+ * anew instead of at its next turn.
+ */
 export async function noteSystemHeard(trx: Trx, systemId: string, heardAt: Date): Promise<void> {
-  await trx.raw('update system_state set last_heard_at = greatest(last_heard_at, ?) where system_id = ?', [
-    heardAt,
-    systemId,
-  ])
+  await trx.raw(
+    `update system_state set last_heard_at = greatest(last_heard_at, :heardAt),
+       moving_at = case when last_heard_at > cast(:heardAt as timestamptz) - interval '6 hours' then moving_at end
+     where system_id = :systemId`,
+    {
+      heardAt,
+      systemId,
+    },
+  )
 }
 
 export async function writeFigures(trx: Trx, systemId: string, figures: unknown, at: Date): Promise<void> {

@@ -9,8 +9,8 @@ export interface Moving {
 }
 
 const DAY_MS = 86_400_000
-/** A step is what moved for so long; after that it is the level to be compared with. */
-const STEP_DAYS = 7
+/** A step is what moved for so long (its notice stands as long); after that it is the level to be compared with. */
+const STEP_DAYS = 14
 /** Days of record before anything is said. */
 const FEWEST_DAYS = 5
 /** Slower than doubling (or halving) in this many days is steady, however certain. */

@@ -14,7 +14,7 @@ import {
   type FamilySuspect,
   type RecordSuspects,
 } from '@/lib/analysis/signatures'
-import { findSteps } from '@/lib/analysis/steps'
+import { findSteps, type Step } from '@/lib/analysis/steps'
 import { figuresBasis } from '@/lib/figures'
 import type { Suspect, Suspects } from '@/shared/schemas'
 
@@ -22,6 +22,7 @@ const DAY_MS = 86_400_000
 /** Weeks tell a steady leak from one that comes and goes; beyond these an older plant is described. */
 const LOOK_BACK_DAYS = 42
 const MOST_LEGS = 300
+const ENOUGH_LEGS = 30
 
 /**
  * The likeliest suspects that a system's record names before anybody goes, as known at `at`, and the factors they
@@ -55,18 +56,18 @@ export async function suspectsAt(trx: Trx, systemId: string, at: Date): Promise<
   const fromMs = Math.max(at.getTime() - LOOK_BACK_DAYS * DAY_MS, place.changedAt?.getTime() ?? 0)
   const from = new Date(fromMs)
   const span = { atMs: at.getTime(), fromMs }
+  const steps = findSteps(await readLegRates(trx, systemId, { from, to: at, at, limit: MOST_LEGS }))
   const offsets = await zoneOffsets(trx, place.timeZone, from, new Date(at.getTime() + DAY_MS))
-  const legs = await legsKnown(trx, systemId, span, MOST_LEGS)
+  const legs = sinceStep(await legsKnown(trx, systemId, span, MOST_LEGS), steps, fromMs)
   const found = suspectsOf({
     at: at.getTime(),
-    // A leg that began before the last change to a part was measured on the plant as it was.
-    legs: legs.filter((leg) => leg.startedAt >= fromMs),
+    legs,
     runs: await runsKnown(trx, systemId, span),
     holds: (await holdsKnown(trx, systemId, span)).filter((hold) => hold.startedAt >= fromMs),
     flushes: await flushesKnown(trx, systemId, span),
     figures: figuresOf(basis.input),
     standardPressurePa: standardPressurePa(basis.setUp.altitudeM),
-    steps: findSteps(await readLegRates(trx, systemId, { from, to: at, at, limit: MOST_LEGS })),
+    steps,
     cupTests: [],
     offsets: offsets.map((offset) => ({ from: offset.from.getTime(), seconds: offset.seconds })),
   })
@@ -80,6 +81,21 @@ export async function suspectsAt(trx: Trx, systemId: string, at: Date): Promise<
     inseparable: [...found.inseparable],
     priorFactors: priorFactorsOf(found, place.parts),
   }
+}
+
+/**
+ * The legs that speak of the leak as it is: from the last change to a part on, and from the last step on where
+ * enough has been measured since, else a level that changed once passes for one that changes with the hours.
+ */
+function sinceStep<Leg extends { startedAt: number }>(
+  legs: readonly Leg[],
+  steps: readonly Step[],
+  fromMs: number,
+): Leg[] {
+  const known = legs.filter((leg) => leg.startedAt >= fromMs)
+  const stepAt = steps[steps.length - 1]?.between[1] ?? fromMs
+  const since = known.filter((leg) => leg.startedAt >= stepAt)
+  return since.length >= ENOUGH_LEGS ? since : known
 }
 
 /** Nobody is named only where valves, the likeliest of all, could have been and were not. */
