@@ -32,14 +32,15 @@ describe('how a leak moves', () => {
     expect(movingOf({ ...none, days: days(20, (day) => 500 * 1.002 ** day) })?.word).toBe('steady')
   })
 
-  it('has stepped for a week, and is compared with the new level afterwards', () => {
+  it('has stepped for two weeks, and is compared with the new level afterwards', () => {
     const jump = (daysAgo: number) => ({
       ...none,
       days: days(20, (day) => level(day < 20 - daysAgo ? 400 : 1500)(day)),
       steps: [step(daysAgo, 400, 1500)],
     })
     expect(movingOf(jump(3))).toEqual({ word: 'stepped', since: AT - 3 * DAY })
-    expect(movingOf(jump(10))?.word).toBe('steady')
+    expect(movingOf(jump(10))).toEqual({ word: 'stepped', since: AT - 10 * DAY })
+    expect(movingOf(jump(15))?.word).toBe('steady')
   })
 
   it('has held since a repair, until it steps up or grows again', () => {
