@@ -1,6 +1,7 @@
 import type { Trx } from '@/db/roles'
 import { forgetAccountBodies } from '@/db/queries/joining'
 import { env } from '@/lib/env'
+import { forgetOldAnswers } from '@/db/queries/uploads'
 import { attachMonths, clearExpired, expireNotices } from '@/db/queries/housekeeping'
 import type { Tick } from '@/lib/ticks/run-tick'
 
@@ -26,6 +27,7 @@ export async function tidy(trx: Trx, now: Date): Promise<Record<string, number>>
   return {
     expired: await expireNotices(trx, 'step', new Date(now.getTime() - STEP_STANDS_MS), now),
     cleared: await clearExpired(trx, new Date(now.getTime() - KEEP_MS)),
+    answers: await forgetOldAnswers(trx, now),
     // The outbox of demo and tests shows what was sent; elsewhere a one-time link has no business in a table.
     forgotten:
       env().mode === 'production' ? await forgetAccountBodies(trx, new Date(now.getTime() - HOUR_MS)) : 0,
