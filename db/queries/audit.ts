@@ -54,6 +54,22 @@ export async function readVesselLog(trx: Trx, vesselId: string, page: Page): Pro
   return rows
 }
 
+/** What was changed of a boat's and one of its systems' set-up, the newest first. Under the service's role, after sight was checked. */
+export async function readSetUpLog(
+  trx: Trx,
+  vesselId: string,
+  systemId: string,
+  limit: number,
+): Promise<LogRow[]> {
+  const { rows } = await trx.raw<{ rows: LogRow[] }>(
+    `${LOG} where a.vessel_id = :vessel and (a.action = 'vessel.changed'
+       or (a.action in ('system.settings', 'system.parts') and a.detail->>'systemId' = :system))
+     order by a.id desc limit :limit`,
+    { vessel: vesselId, system: systemId, limit },
+  )
+  return rows
+}
+
 /**
  * What concerns a shop, and what its people did on vessels that it still sees, the newest first. What owners do on
  * their own boats is theirs.

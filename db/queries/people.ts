@@ -80,3 +80,11 @@ export async function readOwnPlaces(
     .select<{ id: string; name: string }[]>('v.id', 'v.name')
   return { shops, ownVessels }
 }
+
+/** Names by id of those among these people whom the role may know of. */
+export async function namesSeen(trx: Trx, personIds: readonly string[]): Promise<Map<string, string>> {
+  const rows = await trx('person')
+    .whereIn('id', [...new Set(personIds)])
+    .select<{ id: string; name: string }[]>('id', 'name')
+  return new Map(rows.map((row) => [row.id, row.name]))
+}

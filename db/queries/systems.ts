@@ -12,6 +12,16 @@ export async function renameSystem(trx: Trx, systemId: string, name: string): Pr
   await trx('system').where({ id: systemId }).update({ name })
 }
 
+/** The drawing of a system, in the order in which it was drawn. */
+export async function readParts(trx: Trx, systemId: string): Promise<SystemRow['parts']> {
+  const { rows } = await trx.raw<{ rows: SystemRow['parts'] }>(
+    `select key, kind, name, volume_m3::float8 as "volumeM3", parent_key as parent
+     from part where system_id = ? order by id`,
+    [systemId],
+  )
+  return rows
+}
+
 /** Replaces the drawing: parts no longer named go, the others are changed or added. */
 export async function replaceParts(trx: Trx, systemId: string, parts: PartInput[]): Promise<void> {
   await trx('part').where({ system_id: systemId }).delete()

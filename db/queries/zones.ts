@@ -138,3 +138,26 @@ export async function zoneKnown(trx: Trx, timeZone: string): Promise<boolean> {
   )
   return rows[0]?.known ?? false
 }
+
+export interface KnownZone {
+  name: string
+  utcOffsetSeconds: number
+}
+
+/**
+ * Zones whose name holds the words, those that begin with them first; places before abbreviations. What the
+ * system's zone files hold twice under another folder is left out.
+ */
+export async function findZones(trx: Trx, search: string, limit: number): Promise<KnownZone[]> {
+  const { rows } = await trx.raw<{ rows: KnownZone[] }>(
+    `select name, extract(epoch from utc_offset)::int as "utcOffsetSeconds"
+     from pg_timezone_names, lateral (select lower(translate(name, '_', ' ')) as said,
+       lower(translate(cast(:search as text), '_', ' ')) as asked) words
+     where name !~ '^(posix|right)/' and name !~ '^(localtime|posixrules|Factory)$' and position(asked in said) > 0
+     order by position('/' in name) = 0, name ~ '^Etc/',
+       not (said like asked || '%' or split_part(said, '/', -1) like asked || '%'), name
+     limit :limit`,
+    { search, limit },
+  )
+  return rows
+}

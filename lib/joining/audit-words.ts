@@ -19,6 +19,7 @@ const FIELDS: Record<string, string> = {
 const changed = (detail: Record<string, unknown>): string =>
   words(
     Object.keys(detail)
+      .filter((field) => field !== 'before')
       .map((field) => FIELDS[field] ?? field)
       .sort(),
   )

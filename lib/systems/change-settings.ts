@@ -45,13 +45,19 @@ export async function changeSettings(
         personId,
         vesselId: standing.vesselId,
         action: 'system.settings',
-        detail: { systemId, ...change },
+        detail: { systemId, ...change, before: namedBefore(before, change) },
       })
       await rederive(trx, systemId, from)
       return settingsOnWire(next)
     },
   )
 }
+
+/** Of the figures named in a change, what they were. */
+const namedBefore = (before: SettingRow, change: ChangeSettings): Record<string, unknown> =>
+  Object.fromEntries(
+    Object.entries(settingsOnWire(before)).filter(([field]) => field !== 'inForceFrom' && field in change),
+  )
 
 function merged(before: SettingRow, change: ChangeSettings, inForceFrom: Date): SettingRow {
   const pick = <T>(next: T | undefined, old: T): T => (next === undefined ? old : next)

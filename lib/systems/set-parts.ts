@@ -1,5 +1,5 @@
 import { noteAudit } from '@/db/queries/audit'
-import { replaceParts } from '@/db/queries/systems'
+import { readParts, replaceParts } from '@/db/queries/systems'
 import { checkedWrite } from '@/lib/access/checked-write'
 import { requireSystemRight } from '@/lib/access/require-right'
 import type { PartInput } from '@/shared/schemas'
@@ -15,13 +15,14 @@ export async function setParts(
     personId,
     (trx) => requireSystemRight(trx, systemId, 'changeSettings'),
     async (trx, standing) => {
+      const before = await readParts(trx, systemId)
       await replaceParts(trx, systemId, parts)
       await noteAudit(trx, {
         at: now,
         personId,
         vesselId: standing.vesselId,
         action: 'system.parts',
-        detail: { systemId, parts },
+        detail: { systemId, parts, before },
       })
       return { done: true }
     },

@@ -1,5 +1,5 @@
 import { noteAudit } from '@/db/queries/audit'
-import { updateVessel } from '@/db/queries/vessels'
+import { readVessel, updateVessel } from '@/db/queries/vessels'
 import { checkedWrite } from '@/lib/access/checked-write'
 import { requireRight } from '@/lib/access/require-right'
 import type { ChangeVessel } from '@/shared/schemas'
@@ -20,8 +20,16 @@ export async function changeVessel(
       return standing
     },
     async (trx) => {
+      const vessel = await readVessel(trx, vesselId, now)
       await updateVessel(trx, vesselId, change)
-      await noteAudit(trx, { at: now, personId, vesselId, action: 'vessel.changed', detail: change })
+      const before = Object.fromEntries(Object.entries(vessel ?? {}).filter(([field]) => field in change))
+      await noteAudit(trx, {
+        at: now,
+        personId,
+        vesselId,
+        action: 'vessel.changed',
+        detail: { ...change, before },
+      })
       return { done: true }
     },
   )

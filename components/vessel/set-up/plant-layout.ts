@@ -33,3 +33,25 @@ export function layOut(parts: readonly Part[]): PlacedPart[] {
   const used = [...new Set(placed.map((place) => place.column))].sort((a, b) => a - b)
   return placed.map((place) => ({ ...place, column: used.indexOf(place.column) }))
 }
+
+export type UprightPart = { part: Part; depth: number; row: number }
+const DEEPEST = 4
+
+/**
+ * Places the parts one beneath the other, each under the part it leads to and set in by one. Parts that lead in a
+ * ring, or to none that is drawn, stand at the margin; no part is left out.
+ */
+export function layOutUpright(parts: readonly Part[]): UprightPart[] {
+  const keys = new Set(parts.map((part) => part.key))
+  const placed: UprightPart[] = []
+  const done = new Set<string>()
+  const place = (part: Part, depth: number): void => {
+    if (done.has(part.key)) return
+    done.add(part.key)
+    placed.push({ part, depth: Math.min(depth, DEEPEST), row: placed.length })
+    for (const other of parts) if (other.parent === part.key) place(other, depth + 1)
+  }
+  for (const part of parts) if (part.parent === null || !keys.has(part.parent)) place(part, 0)
+  for (const part of parts) place(part, 0)
+  return placed
+}

@@ -8,6 +8,7 @@ import { noticeOperations } from './notices'
 import { peopleOperations } from './people'
 import { readingOperations } from './reading'
 import { serviceOperations } from './service'
+import { setUpOperations } from './set-up'
 import { suspectsOperations } from './suspects'
 import { vesselOperations } from './vessels'
 import { visitOperations } from './visits'
@@ -15,6 +16,7 @@ import { visitOperations } from './visits'
 /** Every address with a schema of its own; sign-in and the upload of samples are described beside them. */
 export const OPERATIONS: readonly Operation[] = [
   ...vesselOperations,
+  ...setUpOperations,
   ...loggerOperations,
   ...commissioningOperations,
   ...readingOperations,

@@ -32,9 +32,11 @@ export const HANDLERS: Record<string, Expectation> = {
 
   // Systems
   'GET /api/systems/{id}/settings':              '401  404 404  404 404  ok   ok  ok  ok   ok',
+  'GET /api/systems/{id}/set-up':                '401  404 404  404 404  ok   ok  ok  ok   ok',
   'PUT /api/systems/{id}/settings':              '401  404 404  404 404  ok   ok  ok  ok   ok',
   'PUT /api/systems/{id}/parts':                 '401  404 404  404 404  ok   ok  ok  ok   ok',
   'PUT /api/systems/{id}/statement':             '401  404 404  404 404  ok   ok  ok  ok   ok',
+  'GET /api/time-zones':                         '401  ok  ok   ok  ok   ok   ok  ok  ok   ok',
   'PUT /api/statements':                         '401  404 404  404 404  ok   ok  ok  ok   ok',
   'GET /api/systems/{id}/summary':               '401  404 404  404 404  ok   ok  ok  ok   ok',
   'GET /api/systems/{id}/runs':                  '401  404 404  404 404  ok   ok  ok  ok   ok',

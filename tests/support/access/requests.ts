@@ -87,6 +87,8 @@ export const REQUESTS: Record<string, Ask> = {
   'GET /api/systems/{id}/trend': system('trend'),
   'GET /api/systems/{id}/comparison': system(`comparison?before=${at(2)}/${at(1)}&after=${at(1)}/${at(0)}`),
   'GET /api/systems/{id}/trace': system(`trace?from=${at(1)}&to=${at(0)}`),
+  'GET /api/systems/{id}/set-up': system('set-up'),
+  'GET /api/time-zones': own('/api/time-zones?search=london'),
   'GET /api/systems/{id}/suspects': system('suspects'),
   'GET /api/outlook-score': own('/api/outlook-score'),
   'GET /api/nights': get((world) => `/api/nights?systems=${world.systemId}&nights=2`),
