@@ -45,6 +45,7 @@ export async function readDeletion(trx: Trx, personId: string): Promise<Deletion
 
 /** Derived and recorded rows of a system that tell of its people and its readings. */
 const BY_SYSTEM = [
+  'cup_test',
   'flush',
   'hold',
   'leg',

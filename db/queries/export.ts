@@ -30,6 +30,8 @@ export async function readExport(trx: Trx, personId: string): Promise<Record<str
     days: `select to_jsonb(d) as day from system_day d where system_id in ${SYSTEMS} order by 1`,
     runs: `select to_jsonb(r) as run from run r where system_id in ${SYSTEMS}`,
     flushes: `select to_jsonb(f) as flush from flush f where system_id in ${SYSTEMS}`,
+    cupTests: `select system_id::text, part_key, head_name, water_at, said_at, taken_back_at from cup_test
+      where system_id in ${SYSTEMS} or said_by = :person order by id`,
     notices: `select id::text, system_id::text, kind, opened_at, closed_at, reason, acknowledged_at, acknowledged_note
       from notice where vessel_id in ${OWN} order by id`,
     messages: `select channel, address, subject, case when purpose = 'account' then null else body_text end as text,

@@ -73,6 +73,10 @@ export function auditWords(row: Pick<LogRow, 'action' | 'detail' | 'shopName'>):
       return 'drew the system anew'
     case 'system.statement':
       return STATEMENTS[text(detail.value) ?? ''] ?? 'took back what was said of a system'
+    case 'cup-test.started':
+      return `put a cup of water in ${text(detail.bowl) ?? 'a bowl'}`
+    case 'cup-test.taken-back':
+      return 'took a cup test back'
     case 'logger.registered':
       return 'registered a logger and was shown its key'
     case 'logger.fitted':

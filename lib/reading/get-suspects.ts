@@ -15,6 +15,7 @@ import {
   type RecordSuspects,
 } from '@/lib/analysis/signatures'
 import { findSteps, type Step } from '@/lib/analysis/steps'
+import { cupTestsKnown } from '@/lib/cup-tests'
 import { figuresBasis } from '@/lib/figures'
 import type { Suspect, Suspects } from '@/shared/schemas'
 
@@ -68,7 +69,7 @@ export async function suspectsAt(trx: Trx, systemId: string, at: Date): Promise<
     figures: figuresOf(basis.input),
     standardPressurePa: standardPressurePa(basis.setUp.altitudeM),
     steps,
-    cupTests: [],
+    cupTests: await cupTestsKnown(trx, systemId, at.getTime(), fromMs),
     offsets: offsets.map((offset) => ({ from: offset.from.getTime(), seconds: offset.seconds })),
   })
   return {

@@ -132,11 +132,34 @@ const READING: Case[] = [
     ask: (p, b) => p.get(`/api/systems/${b.systemId}/suspects`),
     may: ['owner', 'technician', 'manager'],
   },
+  {
+    operation: 'get /api/systems/{id}/cup-tests',
+    ask: (p, b) => p.get(`/api/systems/${b.systemId}/cup-tests`),
+    may: ['owner', 'technician', 'manager'],
+  },
   { operation: 'get /api/notices/{id}', ask: (p, b) => p.get(`/api/notices/${b.noticeId}`), may: ALL },
   { operation: 'get /api/visits/{id}', ask: (p, b) => p.get(`/api/visits/${b.visitId}`), may: ALL },
 ]
 
 const WRITING: Case[] = [
+  {
+    operation: 'post /api/systems/{id}/cup-tests',
+    ask: (p, b) => p.post(`/api/systems/${b.systemId}/cup-tests`, { name: 'Aft head' }),
+    may: ['owner', 'technician', 'manager'],
+    // One at a time: the first bowl is wet when the next is asked for.
+    success: [201, 409],
+  },
+  {
+    operation: 'delete /api/systems/{id}/cup-tests/{testId}',
+    ask: async (p, b) => {
+      const list = await people.owner.get(`/api/systems/${b.systemId}/cup-tests`)
+      const [newest] = (list.body as { items: { id: string }[] }).items
+      return p.delete(`/api/systems/${b.systemId}/cup-tests/${newest?.id ?? 1}`)
+    },
+    may: ['owner', 'technician', 'manager'],
+    // The owner takes it back; for the others there is none left.
+    success: [200, 404],
+  },
   {
     operation: 'patch /api/vessels/{id}',
     ask: (p, b) => p.patch(`/api/vessels/${b.vesselId}`, { quietHours: { start: '21:30', end: '06:30' } }),

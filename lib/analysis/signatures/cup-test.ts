@@ -9,7 +9,7 @@ const SURE = 2
  * with water, surely, is that bowl's seal (the surer when a flush brings it back); one that surely stays clears
  * it. No test: not enough.
  */
-export function cupTest({ cupTests }: SignatureInput): SignatureFinding {
+export function cupTest({ cupTests }: Pick<SignatureInput, 'cupTests'>): SignatureFinding {
   const signature = 'cup-test' as const
   if (cupTests.length === 0)
     return { signature, enough: false, missing: 'a cup of water in one bowl, and an hour' }

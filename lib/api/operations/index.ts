@@ -1,6 +1,7 @@
 import type { Operation } from '../operation'
 import { commissioningOperations } from './commissionings'
 import { accountOperations } from './account'
+import { cupTestOperations } from './cup-tests'
 import { joiningOperations } from './joining'
 import { linkOperations } from './links'
 import { loggerOperations } from './loggers'
@@ -21,6 +22,7 @@ export const OPERATIONS: readonly Operation[] = [
   ...commissioningOperations,
   ...readingOperations,
   ...suspectsOperations,
+  ...cupTestOperations,
   ...noticeOperations,
   ...linkOperations,
   ...visitOperations,

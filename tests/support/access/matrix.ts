@@ -45,6 +45,9 @@ export const HANDLERS: Record<string, Expectation> = {
   'GET /api/systems/{id}/trend':                 '401  404 404  404 404  ok   ok  ok  ok   ok',
   'GET /api/systems/{id}/comparison':            '401  404 404  404 404  ok   ok  ok  ok   ok',
   'GET /api/systems/{id}/suspects':              '401  404 404  404 404  ok   ok  403 ok   403',
+  'GET /api/systems/{id}/cup-tests':             '401  404 404  404 404  ok   ok  403 ok   403',
+  'POST /api/systems/{id}/cup-tests':            '401  404 404  404 404  ok   ok  403 ok   403',
+  'DELETE /api/systems/{id}/cup-tests/{testId}': '401  404 404  404 404  ok   ok  403 ok   403',
   // The installer sees the full record while fitting alone.
   'GET /api/systems/{id}/trace':                 '401  404 404  404 404  ok   ok  403 ok   403',
   'GET /api/nights':                             '401  ok  ok   ok  ok   ok   ok  ok  ok   ok',

@@ -90,6 +90,13 @@ export const REQUESTS: Record<string, Ask> = {
   'GET /api/systems/{id}/set-up': system('set-up'),
   'GET /api/time-zones': own('/api/time-zones?search=london'),
   'GET /api/systems/{id}/suspects': system('suspects'),
+  'GET /api/systems/{id}/cup-tests': system('cup-tests'),
+  'POST /api/systems/{id}/cup-tests': send((world) => `/api/systems/${world.systemId}/cup-tests`, {
+    partKey: 'head',
+  }),
+  'DELETE /api/systems/{id}/cup-tests/{testId}': get(
+    (world) => `/api/systems/${world.systemId}/cup-tests/${world.cupTestId}`,
+  ),
   'GET /api/outlook-score': own('/api/outlook-score'),
   'GET /api/nights': get((world) => `/api/nights?systems=${world.systemId}&nights=2`),
 

@@ -20,6 +20,7 @@ export interface World {
   serial: string
   /** Of the shop with withdrawn access, still fitted to the boat's second system. */
   leftLoggerId: string
+  cupTestId: string
   noticeId: string
   messageId: string
   visitId: string
@@ -271,6 +272,14 @@ async function build(trx: Knex.Transaction): Promise<World> {
     said_by: people.owner.id,
   })
 
+  const cupTestId = await add('cup_test', {
+    system_id: systemId,
+    part_key: 'head',
+    head_name: `head ${marker}`,
+    water_at: hours(-20),
+    said_by: people.owner.id,
+    said_at: hours(-20),
+  })
   const noticeId = await add('notice', {
     system_id: systemId,
     vessel_id: vesselId,
@@ -468,6 +477,7 @@ async function build(trx: Knex.Transaction): Promise<World> {
     ...own,
     serial: `${marker}-a`.slice(0, 60),
     leftLoggerId,
+    cupTestId,
     noticeId,
     messageId,
     visitId,
