@@ -72,7 +72,7 @@ export function SystemTonight({ vessel, system }: { vessel: Vessel; system: Syst
             </ol>
           </>
         ) : null}
-        {kind === 'likely' || kind === 'short-cycling' ? <CupTest /> : null}
+        <CupTest vessel={vessel} system={system} offered={kind === 'likely' || kind === 'short-cycling'} />
       </div>
       <div>
         <h2 className="mt-6 mb-2 lg:mt-2">Last seven nights</h2>
