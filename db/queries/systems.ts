@@ -119,20 +119,42 @@ export async function readSettings(trx: Trx, systemIds: string[], at: Date): Pro
   return rows
 }
 
+/** A system's figures that come into force after an instant, the earliest first. */
+export async function readSettingsAfter(trx: Trx, systemId: string, after: Date): Promise<SettingRow[]> {
+  const { rows } = await trx.raw<{ rows: { at: Date }[] }>(
+    'select in_force_from as at from setting where system_id = :system and in_force_from > :after order by 1',
+    { system: systemId, after },
+  )
+  const found: SettingRow[] = []
+  for (const { at } of rows) found.push(...(await readSettings(trx, [systemId], at)))
+  return found
+}
+
+/** Corrects figures of an instant; who set them there and when stays. */
+export async function correctSetting(trx: Trx, setting: SettingRow): Promise<void> {
+  await trx('setting')
+    .where({ system_id: setting.systemId, in_force_from: setting.inForceFrom })
+    .update(figureColumns(setting))
+}
+
+const figureColumns = (setting: SettingRow) => ({
+  kind: setting.kind,
+  cut_out_pa: setting.cutOutPa,
+  cut_in_pa: setting.cutInPa,
+  limit_seconds: setting.limitSeconds,
+  aim_seconds: setting.aimSeconds,
+  silence_seconds: setting.silenceSeconds,
+  pump_amps: setting.pumpAmps,
+  low_supply_v: setting.lowSupplyV,
+})
+
 /** Writes figures from an instant on; the same instant again replaces them. */
 export async function writeSetting(trx: Trx, setting: SettingRow, setBy: string, setAt: Date): Promise<void> {
   await trx('setting')
     .insert({
       system_id: setting.systemId,
       in_force_from: setting.inForceFrom,
-      kind: setting.kind,
-      cut_out_pa: setting.cutOutPa,
-      cut_in_pa: setting.cutInPa,
-      limit_seconds: setting.limitSeconds,
-      aim_seconds: setting.aimSeconds,
-      silence_seconds: setting.silenceSeconds,
-      pump_amps: setting.pumpAmps,
-      low_supply_v: setting.lowSupplyV,
+      ...figureColumns(setting),
       set_by: setBy,
       set_at: setAt,
     })

@@ -1,5 +1,12 @@
 import { noteAudit } from '@/db/queries/audit'
-import { readSettings, renameSystem, writeSetting, type SettingRow } from '@/db/queries/systems'
+import {
+  correctSetting,
+  readSettings,
+  readSettingsAfter,
+  renameSystem,
+  writeSetting,
+  type SettingRow,
+} from '@/db/queries/systems'
 import { asPerson } from '@/db/roles'
 import { checkedWrite, type Rederive } from '@/lib/access/checked-write'
 import { noSuch, requireSystemRight } from '@/lib/access/require-right'
@@ -18,7 +25,8 @@ export async function getSettings(personId: string, systemId: string, now: Date)
 }
 
 /**
- * New figures from an instant on (default now), what is not named as it was then; the record is derived anew
+ * New figures from an instant on (default now), what is not named as it was then. A figure named for an earlier day
+ * counts until it was next changed itself, whatever else was changed meanwhile. The record is derived anew
  * from there. @throws Problem `not-found`, `not-allowed`, `invalid` when the figures contradict each other
  */
 export async function changeSettings(
@@ -39,6 +47,8 @@ export async function changeSettings(
       if (before === undefined) throw noSuch('system')
       const next = merged(before, change, from)
       await writeSetting(trx, next, personId, now)
+      for (const later of carriedOn(await readSettingsAfter(trx, systemId, from), before, change))
+        await correctSetting(trx, later)
       if (change.name !== undefined) await renameSystem(trx, systemId, change.name)
       await noteAudit(trx, {
         at: now,
@@ -58,6 +68,33 @@ const namedBefore = (before: SettingRow, change: ChangeSettings): Record<string,
   Object.fromEntries(
     Object.entries(settingsOnWire(before)).filter(([field]) => field !== 'inForceFrom' && field in change),
   )
+
+/** Later figures with a change from before them carried on, each figure until somebody set it to something else. */
+function carriedOn(
+  laterRows: readonly SettingRow[],
+  before: SettingRow,
+  change: ChangeSettings,
+): SettingRow[] {
+  const FIGURES = [
+    'kind',
+    'cutOutPa',
+    'cutInPa',
+    'limitSeconds',
+    'aimSeconds',
+    'silenceSeconds',
+    'pumpAmps',
+    'lowSupplyV',
+  ] as const
+  let open = FIGURES.filter((field) => change[field] !== undefined)
+  const corrected: SettingRow[] = []
+  for (const later of laterRows) {
+    open = open.filter((field) => later[field] === before[field])
+    if (open.length === 0) break
+    const carried = Object.fromEntries(open.map((field) => [field, change[field]]))
+    corrected.push(merged(later, carried, later.inForceFrom))
+  }
+  return corrected
+}
 
 function merged(before: SettingRow, change: ChangeSettings, inForceFrom: Date): SettingRow {
   const pick = <T>(next: T | undefined, old: T): T => (next === undefined ? old : next)
