@@ -7,7 +7,8 @@ import { Field } from '@/components/ui/field'
 import { Trouble } from '@/components/ui/sheet-states'
 import type { StartCupTest, System } from '@/shared/schemas'
 
-const OTHER = ''
+/** No part's key: keys hold no asterisk. */
+const OTHER = '*'
 const CHIP =
   'flex min-h-11 cursor-pointer items-center gap-2 rounded-sm border border-field px-3 has-checked:border-ink has-checked:font-semibold has-checked:inset-shadow-[0_-2px_0_var(--ink)] has-focus-visible:outline-2 has-focus-visible:outline-act'
 

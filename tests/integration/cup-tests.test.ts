@@ -1,4 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { eraseRecord } from '@/db/queries/deletion'
+import { readExport } from '@/db/queries/export'
+import { asIngest } from '@/db/roles'
 import { listCupTests, startCupTest, takeBackCupTest } from '@/lib/cup-tests'
 import { getSuspects } from '@/lib/reading/get-suspects'
 import { cupTestSchema } from '@/shared/schemas'
@@ -181,5 +184,15 @@ describe('the right', () => {
       kind: 'not-found',
     })
     await expect(start(sealed, LAST, { name: 'Aft head' }, technician)).resolves.toMatchObject({ open: true })
+  })
+})
+
+describe('the end of an account', () => {
+  it('hands out the cup tests of its boats and erases them with the record', async () => {
+    const exported = await asIngest((trx) => readExport(trx, fixed.ownerId))
+    expect(exported.cupTests?.map((test) => test.head_name)).toEqual(['Forward head', 'Aft head'])
+    await asIngest((trx) => eraseRecord(trx, fixed.vesselId, new Date(LAST + HOUR)))
+    expect(await database.knex('cup_test').where({ system_id: fixed.systemId })).toEqual([])
+    expect(await database.knex('cup_test').where({ system_id: sealed.systemId })).not.toEqual([])
   })
 })
