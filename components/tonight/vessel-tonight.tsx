@@ -17,7 +17,7 @@ export function VesselTonight({ id, name }: { id: string; name: string }) {
   if (error) return <Trouble title={`${name}: ${error.message}`} retry={() => void mutate()} />
   if (!vessel) return <Loading what={name} />
   return (
-    <section aria-label={name} className="border-t border-line pt-7 pb-10 first:border-t-0 first:pt-0">
+    <article aria-label={name} className="border-t border-line pt-7 pb-10 first:border-t-0 first:pt-0">
       <div className="grid gap-10">
         {vessel.systems.map((system) => (
           <SystemTonight key={system.id} vessel={vessel} system={system} />
@@ -44,6 +44,6 @@ export function VesselTonight({ id, name }: { id: string; name: string }) {
           </p>
         </div>
       </div>
-    </section>
+    </article>
   )
 }

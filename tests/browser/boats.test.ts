@@ -31,7 +31,7 @@ describe('an owner’s evening', () => {
   it('says what the night will bring, why, and what to do; and hears that nobody is aboard', async () => {
     const { page, complaints, close } = await readerOf(ACCOUNTS.owner, { viewport: PHONE })
     await page.goto('/tonight')
-    const sheet = page.getByRole('region', { name: 'Browser Hare' })
+    const sheet = page.getByRole('article', { name: 'Browser Hare' })
     const sentence = sheet.locator('[data-kind]')
     await sentence.waitFor()
     expect(await sentence.textContent()).toMatch(
@@ -43,7 +43,7 @@ describe('an owner’s evening', () => {
     await sheet.getByText('Nobody is aboard Browser Hare tonight').waitFor()
     await sheet.getByLabel('Tell by the flushes').check()
     await sheet.getByText('is likely to run').waitFor()
-    const calm = page.getByRole('region', { name: 'Browser Lark' }).locator('[data-kind]')
+    const calm = page.getByRole('article', { name: 'Browser Lark' }).locator('[data-kind]')
     expect(await calm.textContent()).toMatch(/quiet tonight\.$/)
     expect(complaints).toEqual([])
     await close()
@@ -52,7 +52,7 @@ describe('an owner’s evening', () => {
   it('can ask for a visit, and be told that it was asked', async () => {
     const { page, close } = await readerOf(ACCOUNTS.owner)
     await page.goto('/tonight')
-    const sheet = page.getByRole('region', { name: 'Browser Hare' })
+    const sheet = page.getByRole('article', { name: 'Browser Hare' })
     await sheet.getByLabel('What you noticed', { exact: false }).fill('Runs at night since Sunday.')
     await sheet.getByRole('button', { name: /^Ask .* for a visit/ }).click()
     await sheet.getByText('You have asked for a visit').waitFor()
