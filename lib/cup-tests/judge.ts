@@ -99,6 +99,8 @@ export function minutesLeft({ before, wet, wetMinutes }: CupFacts): number | nul
   // The rate before is too rough to clear a bowl by; a seal would show all the same.
   if (wanted <= 0) return least > 0 ? Math.ceil(least) : null
   const more = wetMinutes * ((wet.sigma / Math.sqrt(wanted)) ** (2 / 3) - 1)
+  // Measured well enough, and neither gone nor unchanged: more of the same says no more.
+  if (least <= 0 && more <= 0) return null
   const minutes = Math.ceil(Math.max(least, more, 5))
   return wetMinutes + minutes > MOST_MINUTES ? null : minutes
 }
@@ -125,5 +127,5 @@ function whyNot({ before, wet, over }: CupFacts): string {
     return over
       ? 'a flush came before the leak with water could be measured. Try again, half an hour without a flush.'
       : 'no leak was measured since the water went in. Look whether the logger is heard.'
-  return 'the leak changed too little, or too unevenly, to be sure. Try again when nobody flushes for an hour.'
+  return 'the leak changed too little, or too unevenly, to be sure. Try again: nobody flushes for half an hour before the water and half an hour after.'
 }

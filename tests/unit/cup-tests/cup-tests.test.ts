@@ -132,6 +132,8 @@ describe('the verdict', () => {
     // Wanted: the square root of (0.15 × 2000)² − 60² = 294; 588 is twice that, so 2^(2/3) times as long.
     const left = minutesLeft(facts({ wet: { paPerHour: 1600, sigma: 587.88 }, wetMinutes: 40 }))
     expect(left).toBe(Math.ceil(40 * (2 ** (2 / 3) - 1)))
+    // A fall by a fifth, well measured, is neither: waiting on would never end.
+    expect(minutesLeft(facts({ wet: { paPerHour: 1600, sigma: 40 } }))).toBeNull()
   })
 
   it('cannot tell, and says why', () => {
