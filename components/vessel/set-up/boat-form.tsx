@@ -84,7 +84,12 @@ export function BoatForm({ vessel, done }: { vessel: Vessel; done: () => void })
           </div>
           <Zone control={control} error={wrong('timeZone')} />
           <div className="grid grid-cols-2 gap-4">
-            <Field label="Quiet from" type="time" error={wrong('start')} {...register('start')} />
+            <Field
+              label="Quiet from"
+              type="time"
+              error={wrong('start')}
+              {...register('start', { deps: 'end' })}
+            />
             <Field label="Quiet until" type="time" error={wrong('end')} {...register('end')} />
           </div>
           <Field

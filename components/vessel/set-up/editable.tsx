@@ -1,6 +1,6 @@
 'use client'
 
-import { useState, type ReactNode } from 'react'
+import { useEffect, useRef, useState, type ReactNode } from 'react'
 import { Section } from '@/components/joining/section'
 import { Button } from '@/components/ui/button'
 
@@ -22,17 +22,24 @@ export function Editable({
   children: ReactNode
 }) {
   const [state, setState] = useState<'read' | 'change' | 'saved'>('read')
+  // What was pressed goes away with the change of state, so the focus follows to what came in its place.
+  const place = useRef<HTMLDivElement>(null)
+  const shownAs = useRef(state)
+  useEffect(() => {
+    if (shownAs.current !== state) place.current?.focus()
+    shownAs.current = state
+  }, [state])
   return (
     <Section title={title} about={about}>
       {may && state === 'change' ? (
-        <>
+        <div key="change" ref={place} tabIndex={-1} className="outline-none">
           {form(() => setState('saved'))}
-          <Button weight="plain" className="mt-2" onClick={() => setState('read')}>
+          <Button weight="plain" className="mt-2 -ml-4" onClick={() => setState('read')}>
             Leave as it was
           </Button>
-        </>
+        </div>
       ) : (
-        <>
+        <div key="read" ref={place} tabIndex={-1} className="outline-none">
           {children}
           {may ? (
             <div className="mt-4 flex flex-wrap items-center gap-4 print:hidden">
@@ -44,7 +51,7 @@ export function Editable({
               </span>
             </div>
           ) : null}
-        </>
+        </div>
       )}
     </Section>
   )

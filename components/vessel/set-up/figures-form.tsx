@@ -83,7 +83,7 @@ export function FiguresForm({
               hint={learned(summary?.cutOutPa)}
               inputMode="decimal"
               error={wrong('cutOut')}
-              {...register('cutOut')}
+              {...register('cutOut', { deps: 'cutIn' })}
             />
             <Field
               label={`Pump starts at (cut-in), ${unit}`}
@@ -97,7 +97,7 @@ export function FiguresForm({
               hint="a shorter hold is told"
               inputMode="decimal"
               error={wrong('limitHours')}
-              {...register('limitHours')}
+              {...register('limitHours', { deps: 'aimHours' })}
             />
             <Field
               label="Aim, hours"

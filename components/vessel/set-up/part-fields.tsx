@@ -108,7 +108,7 @@ export function PartFields({
         </>
       )}
       <div>
-        <Button weight="plain" onClick={remove}>
+        <Button weight="plain" className="-ml-4" onClick={remove}>
           Remove {part.name || 'this part'}
         </Button>
       </div>

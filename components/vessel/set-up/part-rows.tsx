@@ -47,7 +47,10 @@ export function PartRows({ form, units }: { form: PartsFormState; units: UnitCho
           <p className="flex flex-wrap items-center gap-x-3">
             {removed.name || 'The part'} goes when you save.
             <Button
+              key={removed.before.length}
               weight="plain"
+              // What was pressed is gone: the way back is where the focus belongs.
+              autoFocus
               onClick={() => {
                 replace(removed.before)
                 setRemoved(null)

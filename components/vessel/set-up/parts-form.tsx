@@ -31,7 +31,7 @@ function Preview({ form, units }: { form: PartsFormState; units: UnitChoice }) {
       volumeM3: checked.success ? saidVolumeM3(checked.data, part.volume, units) : null,
     }
   })
-  return <PlantDrawing parts={drawn} units={units} />
+  return <PlantDrawing parts={drawn} units={units} isNarrow />
 }
 
 /** Draws the system: parts added, renamed, led elsewhere, measured and removed; saved as a whole. */

@@ -3,8 +3,10 @@ import type { Part } from '@/shared/schemas'
 import { formatVolume, type UnitChoice } from '@/shared/units'
 
 export const BOX_HEIGHT = 56
-const GLYPH = 34
-const LETTER = 8
+const GLYPH = 32
+const MARGIN = 10
+/** Width of a letter at its widest usual, so that no name runs out of its box. */
+const LETTER = 8.4
 
 /** One part drawn. Outside of the test it is dashed and empty, so that it is told apart without colour. */
 export function PlantBox({
@@ -18,7 +20,7 @@ export function PlantBox({
   units: UnitChoice
   isOut: boolean
 }) {
-  const letters = Math.floor((width - 10 - GLYPH) / LETTER)
+  const letters = Math.floor((width - 2 * MARGIN) / LETTER)
   const name = part.name.length > letters ? `${part.name.slice(0, letters - 1)}…` : part.name
   return (
     <>
@@ -40,7 +42,7 @@ export function PlantBox({
       <text x="10" y="42" style={{ fill: 'var(--ink-2)', fontSize: 13 }}>
         {part.volumeM3 ? `${part.kind}, ${formatVolume(part.volumeM3, units.volume)}` : part.kind}
       </text>
-      <PartGlyph kind={part.kind} x={width - GLYPH} y={16} />
+      <PartGlyph kind={part.kind} x={width - GLYPH} y={27} />
     </>
   )
 }

@@ -7,7 +7,13 @@ const WIDTH = 172
 const GAP = { x: 56, y: 22 }
 const UPRIGHT = { width: 320, indent: 26, gap: 12 }
 
-type Drawn = { parts: readonly Part[]; units: UnitChoice; inTest?: ReadonlySet<string> | undefined }
+type Drawn = {
+  parts: readonly Part[]
+  units: UnitChoice
+  inTest?: ReadonlySet<string> | undefined
+  /** In a narrow column, however wide the window. */
+  isNarrow?: boolean
+}
 
 /** What a reader who does not see the drawing is told of it. */
 const said = ({ parts, inTest }: Drawn): string =>
@@ -75,7 +81,7 @@ function Upright(drawn: Drawn) {
   return (
     <svg
       viewBox={`-2 -2 ${UPRIGHT.width + 4} ${height + 4}`}
-      className="block h-auto w-full max-w-[24rem] sm:hidden print:hidden"
+      className={`block h-auto w-full max-w-[24rem] ${drawn.isNarrow ? '' : 'sm:hidden print:hidden'}`}
       role="img"
       aria-label={said(drawn)}
     >
@@ -111,7 +117,7 @@ export function PlantDrawing(drawn: Drawn) {
   if (drawn.parts.length === 0) return null
   return (
     <>
-      <Across {...drawn} />
+      {drawn.isNarrow ? null : <Across {...drawn} />}
       <Upright {...drawn} />
     </>
   )

@@ -25,8 +25,11 @@ export function layOut(parts: readonly Part[]): PlacedPart[] {
   )
   const placed = inOrder.map((part) => {
     const column = COLUMN[part.kind]
-    const feeding = inOrder.find((other) => other.parent === part.key && rows.has(other.key))
-    const row = take(column, feeding ? (rows.get(feeding.key) ?? 0) : 0)
+    const feeding = inOrder.flatMap((other) => {
+      const row = other.parent === part.key ? rows.get(other.key) : undefined
+      return row === undefined ? [] : [row]
+    })
+    const row = take(column, feeding.length > 0 ? Math.min(...feeding) : 0)
     rows.set(part.key, row)
     return { part, column, row }
   })

@@ -5,9 +5,9 @@ export type Shape = (typeof SHAPES)[number]
 
 export const SHAPE_WORDS: Record<Shape, string> = {
   typed: 'typed in',
-  cylinder: 'from a cylinder’s diameter and length',
-  box: 'from a box’s three sides',
-  hose: 'from a hose’s inner diameter and length',
+  cylinder: 'cylinder, by its sizes',
+  box: 'box, by its sides',
+  hose: 'hose, by its sizes',
 }
 
 /** What is measured of each shape, in the order of `volumeM3`'s sizes. */
