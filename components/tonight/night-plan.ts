@@ -7,19 +7,42 @@ export const LIKELY = 0.5
 /** Under this chance a night is simply quiet; between, it is only probably so. */
 export const SURELY_QUIET = 0.2
 
-/** Expected runs as a number to say: at least one where a run is likely. */
-export const runsToSay = (outlook: Outlook): number => Math.max(1, Math.round(outlook.expectedRuns ?? 1))
+/** The hold time as a plain figure; null where it is not known, or only as a bound. */
+const holdMsOf = (summary: Summary | null): number | null =>
+  summary?.holdTime && summary.holdTime.bound === null ? summary.holdTime.seconds * 1000 : null
 
-/** The moment to name for the first run: the likeliest when the phase is known, else the latest of its span. */
-export function firstRunInstant(outlook: Outlook): string | null {
-  const first = outlook.firstRun
-  return first === null ? null : (first.at ?? first.latest ?? first.earliest)
+/** While people are up, the night is told as it goes when somebody flushes last thing: the least that is to come. */
+const isOpen = (outlook: Outlook): boolean => outlook.firstRun !== null && outlook.firstRun.at === null
+
+/**
+ * Expected runs as a number to say, at least one where a run is likely: those after a flush last thing while people
+ * are up (as the message says), else as foretold.
+ */
+export function runsToSay(outlook: Outlook, summary: Summary | null): number {
+  const holdMs = holdMsOf(summary)
+  const runs =
+    isOpen(outlook) && holdMs !== null && holdMs > 0
+      ? Math.floor((Date.parse(outlook.night.to) - Date.parse(outlook.bedtime)) / holdMs)
+      : Math.round(outlook.expectedRuns ?? 1)
+  return Math.max(1, runs)
 }
 
-/** The same, to be said: while people are up no minute can be named, so it is the quarter of an hour after the span. */
-export function firstRunToSay(outlook: Outlook): string | null {
-  const instant = firstRunInstant(outlook)
-  if (instant === null || outlook.firstRun?.at !== null) return instant
+/**
+ * The moment to name for the first run: the likeliest when the phase is known, else one hold time after a flush last
+ * thing, else the end of its span.
+ */
+export function firstRunInstant(outlook: Outlook, summary: Summary | null): string | null {
+  const first = outlook.firstRun
+  if (first === null) return null
+  const holdMs = holdMsOf(summary)
+  if (!isOpen(outlook) || holdMs === null) return first.at ?? first.latest ?? first.earliest
+  return new Date(Date.parse(outlook.bedtime) + holdMs).toISOString()
+}
+
+/** The same, to be said: while people are up no minute can be named, so it is the quarter of an hour after it. */
+export function firstRunToSay(outlook: Outlook, summary: Summary | null): string | null {
+  const instant = firstRunInstant(outlook, summary)
+  if (instant === null || !isOpen(outlook)) return instant
   return new Date(quarterAfter(Date.parse(instant))).toISOString()
 }
 
@@ -37,11 +60,11 @@ export function expectedMinutes(
   quiet: readonly [number, number],
 ): number[] {
   if (outlook === null || (outlook.chanceIfFlushedLast ?? 0) < LIKELY) return []
-  const first = firstRunInstant(outlook)
+  const first = firstRunInstant(outlook, summary)
   if (first === null) return []
   const start = minuteOf(first, outlook, quiet)
   const stepMinutes = (summary?.holdTime?.seconds ?? Infinity) / 60
-  const count = Math.min(200, runsToSay(outlook))
+  const count = Math.min(200, runsToSay(outlook, summary))
   return Array.from({ length: count }, (_, index) => start + (index === 0 ? 0 : index * stepMinutes)).filter(
     (minute) => minute < quiet[1] && minute <= STRIP_MINUTES,
   )

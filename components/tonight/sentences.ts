@@ -50,8 +50,8 @@ export function tonightKind({ summary, outlook }: TonightFacts): TonightKind {
 }
 
 function likely(facts: TonightFacts, outlook: Outlook): Phrase[] {
-  const first = firstRunToSay(outlook)
-  const count = runsToSay(outlook)
+  const first = firstRunToSay(outlook, facts.summary)
+  const count = runsToSay(outlook, facts.summary)
   const phrases: Phrase[] = [
     { text: `${facts.name}’s pump is likely to run ` },
     { text: times(count), strong: 'attention' },

@@ -19,7 +19,7 @@ function holds(summary: Summary): Phrase[] {
   ]
 }
 
-function tonight(outlook: Outlook | null, offsets: readonly ZoneOffset[]): Phrase[] {
+function tonight(outlook: Outlook | null, summary: Summary, offsets: readonly ZoneOffset[]): Phrase[] {
   if (outlook === null || outlook.basis === 'learning' || outlook.chanceIfFlushedLast === null) return []
   if (outlook.chanceIfFlushedLast < LIKELY)
     return [
@@ -30,11 +30,11 @@ function tonight(outlook: Outlook | null, offsets: readonly ZoneOffset[]): Phras
             : '; should be quiet tonight',
       },
     ]
-  const first = firstRunToSay(outlook)
+  const first = firstRunToSay(outlook, summary)
   const at = first === null ? '' : clock(first, offsetAt(offsets, Date.parse(first)))
   return [
     { text: ', and would run about ' },
-    { text: times(runsToSay(outlook)), strong: 'ink' },
+    { text: times(runsToSay(outlook, summary)), strong: 'ink' },
     { text: ' tonight' },
     ...(first === null ? [] : [{ text: ', first by about ' }, { text: at, strong: 'ink' as const }]),
   ]
@@ -60,7 +60,7 @@ export function vesselFinding(
       return [{ text: `${word}${at}.` }]
     }
     default: {
-      const said = [...holds(summary), ...tonight(outlook, offsets)]
+      const said = [...holds(summary), ...tonight(outlook, summary, offsets)]
       return said.length === 0 ? [{ text: `${word}.` }] : [{ text: `${word}.` }, ...said, { text: '.' }]
     }
   }

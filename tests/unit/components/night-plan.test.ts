@@ -14,7 +14,7 @@ describe('expected runs on tonight’s strip', () => {
     expect(minuteOf('2026-12-02T03:55:00Z', outlook(), QUIET)).toBe(355)
   })
   it('puts one every hold time after the first, within the quiet hours', () => {
-    expect(expectedMinutes(outlook(), summary(), QUIET)).toEqual([355, 439, 523, 607, 691, 775])
+    expect(expectedMinutes(outlook(), summary(), QUIET)).toEqual([354, 438, 522, 606, 690, 774])
   })
   it('draws none where a run is not likely, and none without an outlook', () => {
     expect(expectedMinutes(outlook({ chanceIfFlushedLast: 0.49 }), summary(), QUIET)).toEqual([])
@@ -28,7 +28,11 @@ describe('expected runs on tonight’s strip', () => {
     expect(many.length).toBeLessThanOrEqual(200)
   })
   it('says at least one run where one is likely', () => {
-    expect(runsToSay(outlook({ expectedRuns: 0.3 }))).toBe(1)
+    expect(runsToSay(outlook({ expectedRuns: 0.3 }), summary({ holdTime: null }))).toBe(1)
+    expect(runsToSay(outlook({ expectedRuns: 0.3 }), summary({ holdTime: hold(20) }))).toBe(1)
+  })
+  it('says as many as a night after a flush last thing has, while people are up', () => {
+    expect(runsToSay(outlook({ expectedRuns: 5 }), summary())).toBe(6)
   })
 })
 
