@@ -29,7 +29,7 @@ export function CupTest({ vessel, system, offered }: { vessel: Vessel; system: S
   const waiting = shown !== null && shown.open && shown.verdict === null
   if (!offered && !shown) return null
   return (
-    <section className="mt-5 max-w-[38em]" aria-label="Cup test">
+    <div role="group" className="mt-5 max-w-[38em]" aria-label="Cup test">
       {shown ? (
         <CupTestRunning
           test={shown}
@@ -54,6 +54,6 @@ export function CupTest({ vessel, system, offered }: { vessel: Vessel; system: S
         </details>
       )}
       <CupTestPast tests={past} offsetSeconds={vessel.utcOffsetSeconds} nowMs={now} />
-    </section>
+    </div>
   )
 }

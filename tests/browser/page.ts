@@ -35,7 +35,7 @@ export async function readerOf(
   page.on('console', (message) => {
     // The frame of an e-mail may run nothing, the checker's own scripts included.
     if (message.type() === 'error' && !message.text().includes('about:srcdoc'))
-      complaints.push(message.text())
+      complaints.push(`${message.text()} ${message.location().url}`)
   })
   page.on('pageerror', (error) => complaints.push(String(error)))
   return { page, context, complaints, close: () => context.close() }
