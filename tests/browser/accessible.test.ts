@@ -6,7 +6,7 @@ import { overflowOf, readerOf } from './page'
 const HOUR = 3_600_000
 let boat: Boat
 beforeAll(async () => {
-  boat = await newBoat(await everybody(), { name: 'Browser Wren', berth: 'Z 93' })
+  boat = await newBoat(await everybody(), { name: 'Checked Wren', berth: 'Z 93' })
   const to = Math.floor(Date.now() / 60_000) * 60_000 - 60_000
   await upload(boat, sawTooth({ from: to - 50 * HOUR, to, paPerHour: 2500, flushes: [to - 20 * HOUR] }))
 })
@@ -17,7 +17,7 @@ const SHEETS: { name: string; path: () => string; as: string | null; ready: RegE
   { name: 'leak-down', path: () => '/calculators', as: null, ready: /It would hold/ },
   { name: 'the outbox', path: () => '/outbox', as: null, ready: /Nothing has been sent|messages?$/ },
   { name: 'tonight', path: () => '/tonight', as: ACCOUNTS.owner, ready: /Last seven nights/ },
-  { name: 'the fleet', path: () => '/fleet?find=wren', as: ACCOUNTS.manager, ready: /Browser Wren/ },
+  { name: 'the fleet', path: () => '/fleet?find=wren', as: ACCOUNTS.manager, ready: /Checked Wren/ },
   { name: 'notices', path: () => '/notices', as: ACCOUNTS.manager, ready: /stand open|stands open| on / },
   ...(
     [

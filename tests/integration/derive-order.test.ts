@@ -4,6 +4,7 @@ import { asIngest } from '@/db/roles'
 import { rebuildSystem } from '@/ingest/rederive'
 import { dump, newBoat, readingsOf, send, senml, type Boat, type Reading } from '../support/boats'
 import { testDatabase, useDatabase, type TestDatabase } from '../support/database'
+import { times } from '@/tests/support/long'
 
 const NOW = new Date('2026-11-20T12:00:00Z')
 const FROM_SECONDS = Date.parse('2026-11-18T03:00:00Z') / 1000
@@ -81,7 +82,7 @@ describe('uploads that do not contradict each other', () => {
           await sendAll(boat, uploads)
           expect(await dump(database.knex, boat)).toEqual(whole)
         }),
-        { numRuns: 24, seed: 20_261 },
+        { numRuns: times(24), seed: 20_261 },
       )
     },
   )

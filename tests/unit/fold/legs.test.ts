@@ -8,6 +8,7 @@ import { compensatedPressurePa, lagTemperature } from '@/lib/analysis/gas'
 import { theilSen } from '@/lib/analysis/statistics'
 import { foldStory, inHg, rowsOf, story } from './story'
 import { FROM, MINUTE, sampleAt } from './worlds'
+import { times } from '@/tests/support/long'
 
 const EACH_MINUTE = { intervalSeconds: 60 }
 const channels = initialState().channels
@@ -49,7 +50,7 @@ describe('bins of a leg', () => {
           })
         },
       ),
-      { numRuns: 100 },
+      { numRuns: times(100) },
     )
   })
 

@@ -14,8 +14,9 @@ import {
   type Row,
 } from '@/lib/analysis/fold'
 import { anyItems, boatItems, foldAll, wildItems } from './worlds'
+import { times } from '@/tests/support/long'
 
-const RUNS = { numRuns: 50 }
+const RUNS = { numRuns: times(50) }
 
 /** What a document store does: another order of keys, the same values. */
 function reversedKeys(value: unknown): unknown {
@@ -185,7 +186,7 @@ describe('the fold', () => {
           expect(serialiseState(resumed)).toBe(serialiseState(state))
         }
       }),
-      { numRuns: 20 },
+      { numRuns: times(20) },
     )
   })
 
@@ -194,7 +195,7 @@ describe('the fold', () => {
       fc.property(wildItems, (items) => {
         expect(() => foldAll(items)).not.toThrow()
       }),
-      { numRuns: 200 },
+      { numRuns: times(200) },
     )
   })
 })

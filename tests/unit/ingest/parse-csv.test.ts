@@ -2,6 +2,7 @@ import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { parseCsv } from '@/ingest/parse-csv'
 import { REASONS, type RecordColumns } from '@/ingest/records'
+import { times } from '@/tests/support/long'
 
 const plain = (columns: RecordColumns) =>
   Array.from({ length: columns.count }, (_, i) => ({
@@ -37,7 +38,7 @@ describe('parseCsv', () => {
         const quoted = all.map((cells) => cells.map((word) => `"${word}"`).join(',')).join(end)
         expect(plain(await parseCsv(text))).toEqual(plain(await parseCsv(quoted)))
       }),
-      { numRuns: 300 },
+      { numRuns: times(300) },
     )
   })
 

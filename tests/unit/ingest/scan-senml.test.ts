@@ -4,6 +4,7 @@ import { parseSenml } from '@/ingest/parse-senml'
 import type { RecordColumns } from '@/ingest/records'
 import { SenmlResolver } from '@/ingest/resolve-senml'
 import { scanSenml } from '@/ingest/scan-senml'
+import { times } from '@/tests/support/long'
 
 const NOW_MS = 1_760_000_000_123
 
@@ -52,7 +53,7 @@ describe('the quick reader of plain packs', () => {
         const text = JSON.stringify([{ note: 'x', ...records[0] }, ...records.slice(1)], null, indent)
         expect(plain(await parseSenml(text, NOW_MS))).toEqual(plain(await theSlowWay(text)))
       }),
-      { numRuns: 500 },
+      { numRuns: times(500) },
     )
   })
 
@@ -72,7 +73,7 @@ describe('the quick reader of plain packs', () => {
         const taken = await scanSenml(text, resolver).catch(() => false)
         if (taken) expect(Array.isArray(JSON.parse(text))).toBe(true)
       }),
-      { numRuns: 2_000 },
+      { numRuns: times(2_000) },
     )
   })
 

@@ -14,6 +14,7 @@ import {
 import { driftingClock, loggerClock, sendableAt } from '@/simulator/logger'
 import { PA_PER_INHG } from '@/simulator/physics/constants'
 import { saturationPressurePa } from '@/simulator/physics/gas'
+import { times } from '@/tests/support/long'
 
 const FROM = Date.UTC(2026, 4, 3)
 const HOUR = 3_600_000
@@ -187,7 +188,7 @@ describe('restarting', () => {
           })
         },
       ),
-      { numRuns: 30 },
+      { numRuns: times(30) },
     )
   })
 
