@@ -104,7 +104,7 @@ const facts = (change: Partial<CupFacts>): CupFacts => ({
 })
 
 describe('the verdict', () => {
-  it('names the seal, and says what the flush did', () => {
+  it('says which seal it is, and what the flush did', () => {
     const wet = judge(facts({}))
     expect(wet).toMatchObject({ verdict: 'seal', minutesLeft: null })
     expect(wet.sentence).toMatch(/seal of Forward head: water took 90 % .* Flush it once/)
